@@ -54,7 +54,7 @@ function consecutive(indices: Vector, start: number): number {
   while (
     start + count < indices.length &&
     count < longestRead &&
-    indices[start + count]! === indices[start]! + count
+    indices[start + count] === indices[start]! + count
   ) {
     count += 1;
   }
