@@ -26,9 +26,9 @@ export function readNpyHeader(name: string, fileBytes: number, read: (position: 
   const { start, length, version } = readPreamble(name, fileBytes, read);
   const text = new TextDecoder(version === 3 ? 'utf-8' : 'latin1').decode(read(start, length));
   const header = parsePythonLiteral(text);
-  if (!(header instanceof Map) || header.size !== 3 || !header.has('descr')) throw badHeader(name, text);
-  const order: PythonValue | undefined = header.get('fortran_order');
-  const shape: PythonValue | undefined = header.get('shape');
+  if (!isDictionary(header) || header.size !== 3 || !header.has('descr')) throw badHeader(name, text);
+  const order = header.get('fortran_order');
+  const shape = header.get('shape');
   if (typeof order !== 'boolean' || !isShape(shape)) throw badHeader(name, text);
   const type = knownType(name, header.get('descr') ?? null);
   const dimensions = fittingShape(name, shape, BigInt(type.size), BigInt(fileBytes - start - length));
@@ -99,6 +99,10 @@ function badHeader(name: string, text: string): ArrayFault {
     expected: "a dictionary of exactly 'descr', 'fortran_order' and 'shape'",
     remedy: 'copy or save the file again',
   });
+}
+
+function isDictionary(value: PythonValue | undefined): value is ReadonlyMap<string, PythonValue> {
+  return value instanceof Map;
 }
 
 function isShape(value: PythonValue | undefined): value is readonly bigint[] {

@@ -30,6 +30,8 @@ function parseValue(reader: Reader, depth: number): PythonValue | undefined {
       return parseItems(reader, ']', depth)?.items;
     case '{':
       return parseDict(reader, depth);
+    case undefined:
+      return undefined;
     default:
       return parseWord(reader);
   }

@@ -73,7 +73,7 @@ function readKeep(
     if (columns.length > 0 && !coordinates.includes(coordinate)) {
       reading.report(unknownName(`a coordinate of ${probe}`, coordinate, coordinates, yaml.place([...path, coordinate])));
     }
-    return readRange(coordinate, range ?? {}, [...path, coordinate], yaml, reading);
+    return readRange(coordinate, range, [...path, coordinate], yaml, reading);
   });
   return { probe, ranges, blocks: blocks ?? null };
 }

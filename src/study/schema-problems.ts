@@ -26,16 +26,9 @@ export function parseWith<T extends z.ZodType>(schema: T, file: YamlFile): Parse
  * Used where the schema itself has no words.
  */
 const expectedText: z.core.$ZodErrorMap = (issue) => {
-  switch (issue.code) {
-    case 'invalid_type':
-      return kindNames[issue.expected] ?? issue.expected;
-    case 'invalid_value':
-      return issue.values.length === 1 ? String(issue.values[0]) : `one of ${issue.values.map(String).join(', ')}`;
-    case 'unrecognized_keys':
-      return keysOf(issue.inst).join(', ');
-    default:
-      return undefined;
-  }
+  if (issue.code === 'invalid_type') return kindNames[issue.expected] ?? issue.expected;
+  if (issue.code === 'invalid_value') return issue.values.length === 1 ? String(issue.values[0]) : `one of ${issue.values.map(String).join(', ')}`;
+  return issue.code === 'unrecognized_keys' ? keysOf(issue.inst).join(', ') : undefined;
 };
 
 const kindNames: Readonly<Record<string, string>> = { string: 'text', number: 'a finite number', array: 'a list', object: 'keys with values', record: 'keys with values' };
@@ -86,7 +79,7 @@ function remedyFor(value: unknown, issue: z.core.$ZodIssue): string {
   if (issue.code === 'invalid_type' && issue.expected === 'string' && (typeof value === 'number' || typeof value === 'boolean')) {
     return 'put it in quotes, so that it is text';
   }
-  if (typeof value === 'string' && /number/.test(issue.message) && !/name/.test(issue.message)) {
+  if (typeof value === 'string' && issue.message.includes('number') && !issue.message.includes('name')) {
     return 'write a plain number: no quotes, no unit, a point for decimals';
   }
   if (issue.code === 'invalid_value' && typeof value === 'string') {
@@ -111,16 +104,16 @@ const longestShown = 60;
 export function describe(value: unknown): string {
   if (value === null) return 'nothing behind the colon';
   if (Array.isArray(value)) return `a list of ${String(value.length)}`;
-  if (typeof value === 'object') return `keys with values: ${Object.keys(value as object).slice(0, 8).join(', ')}`;
+  if (typeof value === 'object') return `keys with values: ${Object.keys(value).slice(0, 8).join(', ')}`;
   if (typeof value === 'string') return `text: ${value.length > longestShown ? `${value.slice(0, longestShown)}…` : value}`;
-  return String(value);
+  return typeof value === 'number' || typeof value === 'boolean' ? String(value) : 'something else';
 }
 
 function withoutKeys(value: unknown, paths: readonly KeyPath[]): unknown {
   const copy: unknown = structuredClone(value);
   for (const path of paths) {
-    const holder = valueAt(copy, path.slice(0, -1)) as Record<string | number, unknown>;
-    delete holder[path.at(-1)!];
+    const holder = valueAt(copy, path.slice(0, -1));
+    if (typeof holder === 'object' && holder !== null) Reflect.deleteProperty(holder, path.at(-1) ?? '');
   }
   return copy;
 }

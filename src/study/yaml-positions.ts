@@ -178,7 +178,7 @@ const duplicate = { what: 'a key stands twice', expected: 'each key once', remed
 
 function keyText(key: unknown): string | null {
   if (!isScalar(key) || key.value === null) return null;
-  return typeof key.value === 'string' ? key.value : (key.source ?? String(key.value));
+  return typeof key.value === 'string' ? key.value : (key.source ?? null);
 }
 
 function scalarValue(node: { readonly value: unknown; readonly source?: string; readonly range?: readonly [number, number, number] | null }, path: KeyPath, walk: Walk): unknown {
