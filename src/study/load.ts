@@ -62,7 +62,7 @@ function openStudyFile(reading: Reading): { readonly file: StudyFile; readonly y
   if (text === null) return null;
   const yaml = parseYaml(text, 'study.yaml');
   yaml.problems.forEach(reading.report);
-  if (yaml.problems.length > 0) return null;
+  if (yaml.value === undefined) return null;
   const { value, problems } = parseWith(studySchema, yaml);
   problems.forEach(reading.report);
   return value === null ? null : { file: value, yaml };

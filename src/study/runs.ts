@@ -36,7 +36,7 @@ function openRun(name: string, reading: Reading): OpenRun | null {
   if (text === null) return null;
   const yaml = parseYaml(text, path);
   yaml.problems.forEach(reading.report);
-  if (yaml.problems.length > 0) return null;
+  if (yaml.value === undefined) return null;
   const { value, problems } = parseRun(yaml);
   problems.forEach(reading.report);
   if (value === null) return null;

@@ -3,6 +3,7 @@ import { isAlias, isMap, isScalar, isSeq, LineCounter, parseDocument } from 'yam
 import type { KeyPath } from './key-path.js';
 import { keyPathText } from './key-path.js';
 import type { Place, Problem } from './problems.js';
+import { firstDeepLine } from './yaml-depth.js';
 
 /** A YAML file as plain data, and where each chain of keys stands in it. */
 export interface YamlFile {
@@ -22,6 +23,8 @@ const forbiddenKeys = new Set(['__proto__', 'constructor', 'prototype']);
  * bounded depth and bounded repetition through aliases. Merge keys (`<<`) are YAML 1.1 and so are ordinary, unknown keys.
  */
 export function parseYaml(text: string, file: string): YamlFile {
+  const deepLine = firstDeepLine(text);
+  if (deepLine !== null) return { value: undefined, place: () => ({ file }), problems: [tooDeep({ file, line: deepLine })] };
   const lines = new LineCounter();
   const document = parseDocument(text, { lineCounter: lines, version: '1.2', schema: 'core', uniqueKeys: false, prettyErrors: false, logLevel: 'error' });
   const at = (offset: number, path?: string): Place => {
@@ -32,9 +35,9 @@ export function parseYaml(text: string, file: string): YamlFile {
   const offsets = new Map<string, number>();
   const place = (path: KeyPath): Place => at(nearestOffset(offsets, path), keyPathText(path));
   if (problems.length > 0) return { value: undefined, place, problems };
-  const walk: Walk = { offsets, at, problems, anchors: new Map(), open: new Set(), aliased: 0, insideAlias: false };
+  const walk: Walk = { offsets, at, problems, anchors: new Map(), open: new Set(), aliased: 0, insideAlias: false, broken: false };
   const value = document.contents === null ? null : plain(document.contents, [], walk);
-  return { value: walk.aliased > mostAliased ? undefined : value, place, problems };
+  return { value: walk.broken ? undefined : value, place, problems };
 }
 
 /** Errors of the parser, tags, and a directive that asks for another YAML. */
@@ -55,15 +58,14 @@ function syntaxProblems(document: Document.Parsed, at: (offset: number) => Place
 }
 
 function syntaxProblem({ code, message }: YAMLError, where: Place): Problem {
+  const start = { what: 'a file is not valid YAML', where };
+  if (code === 'MULTIPLE_DOCS') return { ...start, found: 'a second document', expected: 'one document in a file', remedy: 'remove the line --- and what follows it' };
+  if (code === 'TAG_RESOLVE_FAILED') return { ...start, found: message, expected: 'YAML without tags', remedy: 'remove the tag: the word that starts with !' };
   return {
-    what: 'a file is not valid YAML',
-    where,
+    ...start,
     found: message,
-    expected: code === 'MULTIPLE_DOCS' ? 'one document in a file' : code === 'TAG_RESOLVE_FAILED' ? 'YAML without tags' : 'YAML 1.2',
-    remedy:
-      code === 'TAG_RESOLVE_FAILED'
-        ? 'remove the tag: the word that starts with !'
-        : 'check this line and the one before it: indentation, brackets, and quotes around text that holds { } [ ] , : or #',
+    expected: 'YAML 1.2',
+    remedy: 'check this line and the one before it: indentation, brackets, and quotes around text that holds { } [ ] , : or #',
   };
 }
 
@@ -71,8 +73,8 @@ function tooDeep(where: Place): Problem {
   return {
     what: 'a file is nested too deeply',
     where,
-    found: `more than ${String(deepest)} levels`,
-    expected: 'the few levels that a study has',
+    found: 'more levels, or more indentation, than can be read',
+    expected: `the few levels that a study has, at most ${String(deepest)}`,
     remedy: 'check the brackets and the indentation',
   };
 }
@@ -99,6 +101,8 @@ interface Walk {
   /** Values that were reached through aliases. */
   aliased: number;
   insideAlias: boolean;
+  /** Whether parts are missing, so that the rest is not worth checking. */
+  broken: boolean;
 }
 
 function plain(node: unknown, path: KeyPath, walk: Walk): unknown {
@@ -107,6 +111,7 @@ function plain(node: unknown, path: KeyPath, walk: Walk): unknown {
   if (walk.insideAlias) walk.aliased += 1;
   if (walk.aliased > mostAliased) return undefined;
   if (path.length > deepest) {
+    walk.broken = true;
     walk.problems.push(tooDeep(walk.at(offset)));
     return undefined;
   }
@@ -129,6 +134,7 @@ function aliasValue(name: string, offset: number, path: KeyPath, walk: Walk): un
   const where = walk.at(offset, keyPathText(path));
   const target = walk.anchors.get(name);
   if (target === undefined || walk.open.has(target)) {
+    walk.broken = true;
     walk.problems.push({
       what: 'an alias leads nowhere',
       where,
@@ -144,6 +150,7 @@ function aliasValue(name: string, offset: number, path: KeyPath, walk: Walk): un
   const value = plain(target, path, walk);
   walk.insideAlias = outer;
   if (!outer && before <= mostAliased && walk.aliased > mostAliased) {
+    walk.broken = true;
     walk.problems.push({
       what: 'a file repeats too much through aliases',
       where,
