@@ -53,8 +53,8 @@ export function errorOf(study: Study, assessed: Assessed, parameter: number, kin
       logRaw: valueOf(at.raw, q),
       logCorrected: valueOf(at.corrected, q),
       noisy: assessed.noisy,
-      logLimit: q === null ? null : assessed.limits[q]!,
-      logSplit: q === null ? null : assessed.splits[q]!,
+      logLimit: q === null ? null : (assessed.limits[q] ?? null),
+      logSplit: q === null ? null : (assessed.splits[q] ?? null),
       reason: reasonFor(assessed, q, kind),
       derivativeRealisationsNeeded: q === null ? null : assessed.needed,
     },
@@ -69,7 +69,7 @@ export function ratioOf(study: Study, of: Assessed, by: Assessed, parameter: num
   const left = whole(of.combined);
   const right = whole(by.combined);
   const view = (logs: LogErrors, others: LogErrors): number | null =>
-    difference(q === null ? null : logs[q]!, r === null ? null : others[r]!);
+    difference(q === null ? null : (logs[q] ?? null), r === null ? null : (others[r] ?? null));
   const missing = valueOf(right.corrected, r) === null ? by : of;
   return estimateOf(
     {
@@ -93,7 +93,7 @@ function viewOf(assessed: Assessed, view: 'limits' | 'splits'): LogErrors {
 }
 
 export function valueOf(solved: Solved | null, quantity: number | null): number | null {
-  return solved === null || quantity === null ? null : solved.logs[quantity]!;
+  return solved === null || quantity === null ? null : (solved.logs[quantity] ?? null);
 }
 
 export function difference(a: number | null, b: number | null): number | null {

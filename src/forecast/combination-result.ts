@@ -157,8 +157,8 @@ export function convergenceResult(study: Study, assessed: Assessed): Convergence
 
 function convergenceValues(convergence: Convergence, quantity: number | null): ConvergenceResult['errors'][string]['fixed'] {
   const levels = convergence.levels.map((blocks) => ({
-    raw: present(blocks.map(({ raw }) => (quantity === null ? null : raw[quantity]!))),
-    corrected: present(blocks.map(({ corrected }) => (quantity === null ? null : corrected[quantity]!))),
+    raw: present(blocks.map(({ raw }) => (quantity === null ? null : (raw[quantity] ?? null)))),
+    corrected: present(blocks.map(({ corrected }) => (quantity === null ? null : (corrected[quantity] ?? null)))),
     blocks: blocks.length,
   }));
   const fit = quantity === null ? null : (convergence.fits[quantity] ?? null);
