@@ -49,13 +49,13 @@ function isKnown(name: string): boolean {
 function strangers(directory: string): readonly string[] {
   if (!isFolder(realpathOrNull(directory))) return ['a file, or a link that leads nowhere'];
   return readdirSync(directory, { withFileTypes: true })
-    .sort((a, b) => (a.name < b.name ? -1 : 1))
     .flatMap((entry) => {
       if (!entry.isDirectory() || knownFolders[entry.name] === undefined) return entry.isFile() && isKnown(entry.name) ? [] : [entry.name];
       return readdirSync(path.join(directory, entry.name), { withFileTypes: true })
         .filter((inner) => !inner.isFile() || !isKnown(`${entry.name}/${inner.name}`))
         .map((inner) => `${entry.name}/${inner.name}`);
-    });
+    })
+    .sort();
 }
 
 function inTheWay(directory: string, { study, inputs }: Sources): string | null {

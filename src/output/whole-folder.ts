@@ -115,5 +115,6 @@ const reasons: Readonly<Record<string, string>> = {
   EBUSY: 'the folder is in use, or another disk is mounted there',
   EXDEV: 'another disk is mounted there',
   ENOTDIR: 'a part of the path is a file, not a folder',
+  ENAMETOOLONG: 'a name that is too long',
   EEXIST: 'a file is in the way',
 };

@@ -45,7 +45,7 @@ export function readRealisations(
   if (array === null) return null;
   const rows = array.rows();
   if (array.shape.length === 0 || rows.columns !== columns) {
-    report(reading, array, `[realisations, ${String(columns)}], one column for each entry of the vector`, where, rows.rows === columns);
+    report(reading, array, `[realisations, ${String(columns)}], one column for each entry of the vector`, where, array.shape.length === 2 && rows.rows === columns);
     return null;
   }
   if (rows.rows < 2) {

@@ -78,7 +78,7 @@ function readKeep(
   return { probe, ranges, blocks: blocks ?? null };
 }
 
-export function coordinatesOf(columns: Run['columns']): readonly string[] {
+function coordinatesOf(columns: Run['columns']): readonly string[] {
   return [...new Set(columns.flatMap(({ coordinate }) => (coordinate === null ? [] : [coordinate.name])))];
 }
 

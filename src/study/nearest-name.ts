@@ -41,11 +41,12 @@ export function nearestName(name: string, valid: Iterable<string>): string | nul
 /** A name that stands for nothing. `kind` with its article: `a probe`. */
 export function unknownName(kind: string, name: string, valid: readonly string[], where: Place): Problem {
   const nearest = nearestName(name, valid);
+  const distinct = [...new Set(valid)];
   return {
     what: `a name is not that of ${kind}`,
     where,
     found: name,
-    expected: valid.length === 0 ? 'none is defined' : valid.length === 1 ? valid[0]! : `one of ${valid.join(', ')}`,
-    remedy: nearest === null ? 'use one of these names' : `write ${nearest}, if that is what was meant`,
+    expected: distinct.length > 1 ? `one of ${distinct.join(', ')}` : (distinct[0] ?? 'none is defined'),
+    remedy: nearest === null ? (distinct.length === 0 ? 'remove it' : distinct.length === 1 ? 'use this name' : 'use one of these names') : `write ${nearest}, if that is what was meant`,
   };
 }

@@ -34,7 +34,7 @@ export function findInside(root: string, folder: string, name: string, where: Pl
   const path = posix.join(folder, name);
   try {
     const real = realpathSync(join(root, path));
-    if (real.startsWith(root.endsWith(sep) ? root : root + sep)) return { kind: 'inside', file: { path, real } };
+    if (isInside(root, real)) return { kind: 'inside', file: { path, real } };
   } catch (error) {
     return refused(missing(root, path, name, error, where));
   }
@@ -45,6 +45,10 @@ export function findInside(root: string, folder: string, name: string, where: Pl
     expected: 'files inside the study folder',
     remedy: 'replace the link by a copy of what it leads to',
   });
+}
+
+function isInside(root: string, real: string): boolean {
+  return real === root || real.startsWith(root.endsWith(sep) ? root : root + sep);
 }
 
 function refused(problem: Problem): Found {
@@ -61,22 +65,31 @@ function faultOf(name: string): string | null {
 }
 
 function missing(root: string, path: string, name: string, error: unknown, where: Place): Problem {
-  const reason = systemReason(error);
-  const nearest = nearestName(posix.basename(path), neighbours(root, posix.dirname(path)));
-  return {
-    what: 'a file cannot be found',
-    where,
-    found: `${path}: ${reason}`,
-    expected: 'a file inside the study folder',
-    remedy: nearest === null ? `put the file there, or correct the name ${name}` : `write ${posix.join(posix.dirname(name), nearest)}, if that is what was meant`,
-  };
+  const own = posix.basename(path);
+  const names = neighbours(root, posix.dirname(path));
+  const start = { what: 'a file cannot be found', where, expected: 'a file inside the study folder' };
+  if (names.includes(own)) {
+    return { ...start, found: `${path}: a link that leads nowhere, or a file that may not be read`, remedy: 'replace a link by a copy of what it should lead to' };
+  }
+  const nearest = nearestName(own, names);
+  return { ...start, found: `${path}: ${systemReason(error)}`, remedy: where.path === undefined ? fixedName(path, nearest) : named(name, nearest) };
+}
+
+/** What to do about a file whose name the format gives. */
+function fixedName(path: string, nearest: string | null): string {
+  return nearest === null ? `make ${path}` : `rename ${nearest} to ${posix.basename(path)}`;
+}
+
+/** What to do about a file that a key names. */
+function named(name: string, nearest: string | null): string {
+  return nearest === null ? `put the file there, or correct the name ${name}` : `write ${posix.join(posix.dirname(name), nearest)}, if that is what was meant`;
 }
 
 /** Names beside the missing file; none where its folder is missing too, or lies outside. */
 function neighbours(root: string, folder: string): readonly string[] {
   try {
     const real = realpathSync(join(root, folder));
-    return real === root || real.startsWith(root + sep) ? readdirSync(real).sort() : [];
+    return isInside(root, real) ? readdirSync(real).sort() : [];
   } catch {
     return [];
   }

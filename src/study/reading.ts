@@ -23,7 +23,7 @@ export interface Reading {
   readonly report: (problem: Problem) => void;
 }
 
-export const longestText = 1_048_576;
+const longestText = 1_048_576;
 
 /** A text file in UTF-8, null where it cannot be read. */
 export function readText(reading: Reading, folder: string, name: string, where: Place): string | null {
@@ -96,7 +96,7 @@ function unusableProblem(array: NumericArray, { value, count, row, column }: Unu
     where,
     found: `${array.name}: ${value} at ${place} (counted from 0), ${others}`,
     expected: finite ? 'finite numbers only' : 'integers up to 2^53 in size',
-    remedy: finite ? 'leave the realisations that failed out of the file, and their seeds out of its seeds file' : 'use smaller integers: seeds only need to differ',
+    remedy: finite ? 'mend what wrote the file; where a simulation failed, leave out its row and its seed' : 'use smaller integers: seeds only need to differ',
   };
 }
 

@@ -47,6 +47,9 @@ function problemsOf(issue: z.core.$ZodIssue, file: YamlFile): readonly Problem[]
   if (issue.code === 'unrecognized_keys') return issue.keys.map((key) => unknownKey(key, path, issue.message, file));
   const value = valueAt(file.value, path);
   const last = path.at(-1);
+  if (value === null && last === undefined) {
+    return [{ what: 'a file is empty', where: file.place(path), found: 'no key', expected: issue.message, remedy: 'fill the file: see the format of a study' }];
+  }
   if (value === undefined) {
     return [
       {
@@ -86,7 +89,7 @@ function remedyFor(value: unknown, issue: z.core.$ZodIssue): string {
     const nearest = nearestName(value, issue.values.map(String));
     if (nearest !== null) return `write ${nearest}, if that is what was meant`;
   }
-  return 'correct it';
+  return `write ${issue.message}`;
 }
 
 function valueAt(value: unknown, path: KeyPath): unknown {
@@ -101,7 +104,7 @@ function valueAt(value: unknown, path: KeyPath): unknown {
 const longestShown = 60;
 
 /** A value in a few words. */
-export function describe(value: unknown): string {
+function describe(value: unknown): string {
   if (value === null) return 'nothing behind the colon';
   if (Array.isArray(value)) return `a list of ${String(value.length)}`;
   if (typeof value === 'object') return `keys with values: ${Object.keys(value).slice(0, 8).join(', ')}`;

@@ -1,10 +1,10 @@
-import { execFileSync } from 'node:child_process';
 import { appendFileSync, mkdtempSync, rmSync, truncateSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { afterAll, describe, expect, it } from 'vitest';
 import { openNpy } from '../../src/arrays/npy.js';
 import { npyBytes, npyFile } from '../fixtures/npy-writer.js';
+import { makePipe } from '../fixtures/pipe.js';
 import { faultText } from './fault-text.js';
 
 const folder = mkdtempSync(path.join(tmpdir(), 'sigmafolio-npy-'));
@@ -176,7 +176,7 @@ describe('files that are no arrays', () => {
 describe('files that are not ordinary', () => {
   it('does not wait for a pipe, and opens no folder', () => {
     const pipe = path.join(folder, 'pipe.npy');
-    execFileSync('mkfifo', [pipe]);
+    makePipe(pipe);
     const message = 'a path is not a file\nx.npy is a folder, a pipe or a device\nan ordinary file\nname the file that holds the data';
     expect(faultText(() => openNpy(pipe, 'x.npy'))).toBe(message);
     expect(faultText(() => openNpy(folder, 'x.npy'))).toBe(message);

@@ -78,7 +78,7 @@ describe('array files that cannot be used', () => {
         where     runs/power/run.yaml:6:12  fiducial.values
         found     fiducial.npy: NaN at row 33, column 1 (counted from 0), the only one
         expected  finite numbers only
-        do        leave the realisations that failed out of the file, and their seeds out of its seeds file"
+        do        mend what wrote the file; where a simulation failed, leave out its row and its seed"
     `);
   });
 
@@ -88,7 +88,7 @@ describe('array files that cannot be used', () => {
         where     runs/power/run.yaml:6:12  fiducial.values
         found     fiducial.npy: -infinity at row 59, column 2 (counted from 0), the only one
         expected  finite numbers only
-        do        leave the realisations that failed out of the file, and their seeds out of its seeds file"
+        do        mend what wrote the file; where a simulation failed, leave out its row and its seed"
     `);
   });
 
@@ -98,7 +98,7 @@ describe('array files that cannot be used', () => {
         where     runs/power/run.yaml:18:16  derivatives.shear_bias.exact
         found     shear_bias.npy: NaN at index 1 (counted from 0), the first of 2 such values
         expected  finite numbers only
-        do        leave the realisations that failed out of the file, and their seeds out of its seeds file"
+        do        mend what wrote the file; where a simulation failed, leave out its row and its seed"
     `);
   });
 
@@ -140,7 +140,7 @@ describe('shapes that do not fit', () => {
         where     runs/power/run.yaml:6:12  fiducial.values
         found     fiducial.npy has the shape [3]
         expected  [realisations, 3], one column for each entry of the vector
-        do        save the transpose: one row for each realisation"
+        do        check that this is the right file, and the vector of its run"
     `);
   });
 

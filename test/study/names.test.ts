@@ -45,7 +45,7 @@ describe('names that stand for nothing', () => {
         where     study.yaml:8:66  combinations[0].keep.peaks
         found     peaks
         expected  power
-        do        use one of these names"
+        do        use this name"
     `);
   });
 
@@ -161,12 +161,12 @@ describe('combinations, scans and claims that contradict themselves', () => {
       error: a name is not that of a parameter
         where     runs/peaks/run.yaml:13:3  derivatives.sigma_8
         found     sigma_8
-        expected  one of omega_m, omega_m, shear_bias
+        expected  one of omega_m, shear_bias
         do        use one of these names
       error: a name is not that of a parameter
         where     runs/power/run.yaml:13:3  derivatives.sigma_8
         found     sigma_8
-        expected  one of omega_m, omega_m, shear_bias
+        expected  one of omega_m, shear_bias
         do        use one of these names"
     `);
   });
@@ -297,7 +297,7 @@ describe('combinations, scans and claims that contradict themselves', () => {
         where     study.yaml:12:88  claims[0].gain.at_least
         found     0
         expected  a finite number above 0
-        do        correct it"
+        do        write a finite number above 0"
     `);
   });
 
@@ -354,7 +354,7 @@ describe('runs that do not fit together', () => {
         where     study.yaml:9:68  combinations[1].probes[1]
         found     peaks
         expected  power
-        do        use one of these names"
+        do        use this name"
     `);
   });
 
@@ -414,7 +414,7 @@ describe('runs that do not fit together', () => {
         where     runs/peaks/run.yaml
         found     runs/peaks/run.yaml: no such file
         expected  a file inside the study folder
-        do        put the file there, or correct the name runs/peaks/run.yaml"
+        do        make runs/peaks/run.yaml"
     `);
   });
 
@@ -424,7 +424,7 @@ describe('runs that do not fit together', () => {
         where     study.yaml
         found     study.yaml: no such file
         expected  a file inside the study folder
-        do        put the file there, or correct the name study.yaml"
+        do        make study.yaml"
     `);
   });
 

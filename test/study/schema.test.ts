@@ -57,7 +57,7 @@ describe('keys of study.yaml that are wrong', () => {
         where     study.yaml:6:21  parameters[2].fiducial
         found     NaN
         expected  a finite number
-        do        correct it"
+        do        write a finite number"
     `);
   });
 
@@ -77,7 +77,7 @@ describe('keys of study.yaml that are wrong', () => {
         where     study.yaml:5:53  parameters[1].prior
         found     0
         expected  a finite number above 0
-        do        correct it"
+        do        write a finite number above 0"
     `);
   });
 
@@ -87,7 +87,7 @@ describe('keys of study.yaml that are wrong', () => {
         where     study.yaml:6:6  parameters[2].name
         found     text: sigma-8
         expected  a parameter name: a letter, then letters, digits or _, no word that JavaScript reserves
-        do        correct it"
+        do        write a parameter name: a letter, then letters, digits or _, no word that JavaScript reserves"
     `);
   });
 
@@ -97,7 +97,7 @@ describe('keys of study.yaml that are wrong', () => {
         where     study.yaml:9:6  combinations[1].name
         found     text: constructor
         expected  a name: a letter, then letters, digits, _ or -, no word that JavaScript reserves
-        do        correct it"
+        do        write a name: a letter, then letters, digits, _ or -, no word that JavaScript reserves"
     `);
   });
 
@@ -117,7 +117,7 @@ describe('keys of study.yaml that are wrong', () => {
         where     study.yaml:11:1  tolerance
         found     1
         expected  a number between 0 and 1, both excluded
-        do        correct it"
+        do        write a number between 0 and 1, both excluded"
     `);
   });
 
@@ -127,7 +127,7 @@ describe('keys of study.yaml that are wrong', () => {
         where     study.yaml:11:1  date
         found     text: 2031-02-30
         expected  a date such as 2031-05-02
-        do        correct it"
+        do        write a date such as 2031-05-02"
     `);
   });
 
@@ -137,7 +137,7 @@ describe('keys of study.yaml that are wrong', () => {
         where     study.yaml:11:29  authors[0].orcid
         found     text: 0000-0000
         expected  an ORCID iD, such as 0000-0002-1825-0097
-        do        correct it"
+        do        write an ORCID iD, such as 0000-0002-1825-0097"
     `);
   });
 
@@ -147,7 +147,7 @@ describe('keys of study.yaml that are wrong', () => {
         where     study.yaml:1:1  format
         found     2
         expected  1
-        do        correct it"
+        do        write 1"
     `);
   });
 
@@ -157,7 +157,7 @@ describe('keys of study.yaml that are wrong', () => {
         where     study.yaml:8:42  combinations[0].probes
         found     a list of 0
         expected  a list with at least one item
-        do        correct it"
+        do        write a list with at least one item"
     `);
   });
 
@@ -280,11 +280,11 @@ describe('keys of run.yaml that are wrong', () => {
 
   it('says when a file is empty', async () => {
     expect(await refusals(changed(minimalStudy(), { 'runs/power/run.yaml': '' }))).toMatchInlineSnapshot(`
-      "error: a value is not what it should be
+      "error: a file is empty
         where     runs/power/run.yaml:1:1
-        found     nothing behind the colon
+        found     no key
         expected  keys with values
-        do        give it a value, or remove the key"
+        do        fill the file: see the format of a study"
     `);
   });
 
