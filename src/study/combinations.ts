@@ -109,9 +109,13 @@ export function readScan(study: StudyFile, runs: Vectors, yaml: YamlFile, readin
   const { coordinate, keep = 'below', at } = study.scan;
   const known = coordinatesOf(runs.flatMap(({ columns }) => columns));
   if (!known.includes(coordinate)) reading.report(unknownName('a coordinate', coordinate, known, yaml.place(['scan', 'coordinate'])));
+  const seen = new Map<number, number>();
   at.forEach((cut, i) => {
-    const first = at.indexOf(cut);
-    if (first === i) return;
+    const first = seen.get(cut);
+    if (first === undefined) {
+      seen.set(cut, i);
+      return;
+    }
     reading.report({
       what: 'a cut stands twice',
       where: yaml.place(['scan', 'at', i]),

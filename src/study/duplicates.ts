@@ -3,9 +3,13 @@ import type { Reading } from './reading.js';
 
 /** Reports each name that stands in a list for the second time. `kind` with its article: `a probe`. */
 export function reportDuplicates(kind: string, names: readonly string[], place: (index: number) => Place, { report }: Pick<Reading, 'report'>): void {
+  const seen = new Map<string, number>();
   names.forEach((name, i) => {
-    const first = names.indexOf(name);
-    if (first === i) return;
+    const first = seen.get(name);
+    if (first === undefined) {
+      seen.set(name, i);
+      return;
+    }
     report({
       what: `the name of ${kind} stands twice`,
       where: place(i),

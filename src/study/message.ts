@@ -14,7 +14,10 @@ function placeText({ file, line, column, path }: Place): string {
   return path === undefined ? position : `${position}  ${path}`;
 }
 
-/** Names come from files: what could move the cursor, colour the terminal or turn the direction of writing is spelt out. */
+const longest = 1000;
+
+/** Names come from files: what could move the cursor, colour the terminal or turn the direction of writing is spelt out, and no line is endless. */
 function printable(text: string): string {
-  return text.replace(/[\p{Cc}\p{Cf}\p{Zl}\p{Zp}]/gu, (character) => `\\u{${character.codePointAt(0)!.toString(16)}}`);
+  const short = text.length > longest ? `${text.slice(0, longest)}…` : text;
+  return short.replace(/[\p{Cc}\p{Cf}\p{Zl}\p{Zp}]/gu, (character) => `\\u{${character.codePointAt(0)!.toString(16)}}`);
 }

@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import { appendFileSync, mkdtempSync, rmSync, truncateSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
@@ -58,6 +59,14 @@ describe('reading rows', () => {
     // Source: the limits of binary16 in IEEE 754-2008, table 3.5 (11-bit precision, emax 15).
     const array = open(npyFile(header('<f2', '(7,)'), bytesOf(Uint16Array.of(0x0001, 0x03ff, 0x0400, 0x3c01, 0x7bff, 0xc000, 0x8000))));
     expect(Array.from(array.values())).toEqual([2 ** -24, 1023 * 2 ** -24, 2 ** -14, 1 + 2 ** -10, 65504, -2, -0]);
+  });
+
+  it('reads all 63488 finite patterns of float16 as NumPy does', () => {
+    // Source: NumPy 2.4.6, SHA-256 of numpy.arange(65536, dtype='u2').view('f2'), finite ones only, as '<f8' bytes.
+    const array = open(npyFile(header('<f2', '(65536,)'), bytesOf(Uint16Array.from({ length: 65536 }, (_, bits) => bits))));
+    const finite = array.values().filter((value) => Number.isFinite(value));
+    expect(finite).toHaveLength(63488);
+    expect(createHash('sha256').update(bytesOf(finite)).digest('hex')).toBe('aa36751fa3d7a1ad367c17b8505f04d7c8b01bb1eb0dec00b0f1c4ee444d56d3');
   });
 
   it('reads the long integers of Python 2 headers', () => {

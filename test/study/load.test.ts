@@ -91,6 +91,11 @@ claims:
     expect(Array.from(prior!.data)).toEqual([4, 2, 1, 2, 6, 3, 1, 3, 5]);
   });
 
+  it('takes a prior matrix that is written out', async () => {
+    const { prior } = await load(study('baseline: power', 'baseline: power\nprior: [[4, 0, 0], [0, 5, 0], [0, 0, 0]]'));
+    expect(Array.from(prior!.data)).toEqual([4, 0, 0, 0, 0, 0, 0, 0, 5]);
+  });
+
   it('may have one run without a suite, which is then named after the run', async () => {
     const alone = changed(edited(power('suite: box-a\n', ''), 'study.yaml', '  - {name: joint, label: Power spectrum and peaks, probes: [power, peaks]}\n', ''), {});
     const { runs } = await load(new Map([...alone].filter(([name]) => !name.startsWith('runs/peaks/'))));

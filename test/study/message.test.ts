@@ -21,6 +21,10 @@ describe('the text of a problem', () => {
     expect(formatProblem({ what: 'x', where: { file: 'a.yaml', line: 3 }, remedy: 'y' })).toBe('error: x\n  where     a.yaml:3\n  do        y');
   });
 
+  it('cuts lines that would have no end', () => {
+    expect(formatProblem({ what: 'x', where: { file: 'a' }, found: 'y'.repeat(100_000), remedy: 'z' })).toBe(`error: x\n  where     a\n  found     ${'y'.repeat(1000)}…\n  do        z`);
+  });
+
   it('spells out characters that could move the cursor, colour the terminal or turn the text around', () => {
     expect(formatProblem({ what: 'x', where: { file: 'a' }, found: '\u001b[31mred\nerror: y\u202e\u2028Ω é', remedy: 'y' })).toBe(
       'error: x\n  where     a\n  found     \\u{1b}[31mred\\u{a}error: y\\u{202e}\\u{2028}Ω é\n  do        y',
