@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import type { GaussianModel } from '../fixtures/gaussian-study.js';
 import type { Trial } from './trials.js';
-import { binomialBounds, covers, reliable, runTrials, within } from './trials.js';
+import { binomialBounds, covers, falselySupported, reliable, runTrials, within } from './trials.js';
 
 // Every study is seeded and made from a linear Gaussian (or lognormal) model whose errors are known in closed form.
 // Bounds are those of the binomial law around the ranges of the contract (methods, section 4), not what came out.
@@ -28,13 +28,6 @@ function expectCoverage(trials: readonly Trial[], pick: 'error' | 'gain', low: n
   const [least, most] = binomialBounds(trials.length, low, high);
   expect(covered).toBeGreaterThanOrEqual(least);
   expect(covered).toBeLessThanOrEqual(most);
-}
-
-/** A claim exactly at the truth is false by a hair: supported at most 5 % of the time. */
-function falselySupported(trial: Trial): boolean {
-  const { corrected, relativeStandardError } = trial.gain;
-  if (corrected === null || relativeStandardError === null) return false;
-  return Math.log(corrected / trial.trueGain) >= 1.6448536269514722 * relativeStandardError;
 }
 
 describe('well-determined studies', () => {

@@ -1,5 +1,6 @@
 import { inverse, Matrix as Dense } from 'ml-matrix';
 import { forecast } from '../../src/forecast/forecast.js';
+import { z95OneSided } from '../../src/forecast/thresholds.js';
 import type { Estimate, Results } from '../../src/results/schema.js';
 import type { GaussianModel } from '../fixtures/gaussian-study.js';
 import { gaussianStudy, trueFisher } from '../fixtures/gaussian-study.js';
@@ -40,6 +41,13 @@ export function covers({ interval }: Estimate, truth: number): boolean {
 
 export function within({ corrected }: Estimate, truth: number, tolerance: number): boolean {
   return corrected !== null && Math.abs(Math.log(corrected / truth)) <= Math.log(1 + tolerance);
+}
+
+/** A claim exactly at the truth is false by a hair: it may be supported at most 5 % of the time. */
+export function falselySupported({ gain, trueGain }: Trial): boolean {
+  const { corrected, relativeStandardError } = gain;
+  if (corrected === null || relativeStandardError === null) return false;
+  return Math.log(corrected / trueGain) >= z95OneSided * relativeStandardError;
 }
 
 export function reliable({ status }: Estimate): boolean {
