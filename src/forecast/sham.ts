@@ -89,11 +89,13 @@ function withNoise(part: Part, bits: RandomBits): Float64Array {
   const signs = Float64Array.from({ length: part.suite.derivativeSeeds.size }, () => ((bits() & 0x8000) === 0 ? -1 : 1));
   for (const strand of part.strands) {
     const start = strand.parameter * columns;
+    const { data } = strand.plain;
     const noise = new Float64Array(columns);
-    strand.seeds.forEach((seed, row) => {
-      const sign = signs[seed]!;
-      for (let i = 0; i < columns; i += 1) noise[i] = noise[i]! + sign * strand.plain.data[row * columns + i]!;
-    });
+    for (let row = 0; row < strand.seeds.length; row += 1) {
+      const sign = signs[strand.seeds[row]!]!;
+      const from = row * columns;
+      for (let i = 0; i < columns; i += 1) noise[i] = noise[i]! + sign * data[from + i]!;
+    }
     part.entries.forEach((entry, i) => {
       if (entry.added) derivatives[start + i] = derivatives[start + i]! + noise[i]! / strand.seeds.length;
     });

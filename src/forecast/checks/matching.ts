@@ -23,7 +23,7 @@ function describe(run: Run, parameter: string, derivative: RunDerivative): reado
   const evidence =
     nodeCorrelation === null || noiseReduction === null
       ? ''
-      : ` The correlation between the outermost nodes is ${nodeCorrelation.toFixed(2)} (median over entries), and differencing cuts the noise variance by ${noiseReduction.toPrecision(2)}.`;
+      : ` The correlation between the outermost nodes is ${nodeCorrelation.toFixed(2)} (median over entries), and differencing cuts the noise variance by a factor of ${factor(noiseReduction)}.`;
   const rows = `${String(realisations)} realisations`;
   switch (derivative.matching) {
     case 'by seed':
@@ -61,4 +61,9 @@ function indexMatched(id: string, where: string, rows: string, evidence: string,
     message: `No seeds were given: rows are matched by their index, ${rows}.${evidence}${doubtful ? ' They do not look like the same realisations: give seeds: to be sure.' : ''}`,
     where,
   };
+}
+
+/** Two digits without an exponent: a factor may be 0.9 or 13000. */
+function factor(value: number): string {
+  return value < 10 ? value.toFixed(1) : String(Number(value.toPrecision(2)));
 }
