@@ -29,7 +29,8 @@ export function lognormalModel(power: Float64Array, shift: number, fourier: Four
   // The transform of xi is the variance of each mode of white noise that has been through the filter.
   const least = -1e-12 * correlation.reduce((most, value) => Math.max(most, value), 0);
   const filter = correlation.map((value) => {
-    if (value < least) throw new Error(`a lognormal map of shift ${String(shift)} cannot have this spectrum: power ${String(value)} in a mode`);
+    // Not a number, where the correlation falls below -shift^2, is refused as well.
+    if (!(value >= least)) throw new Error(`a lognormal map of shift ${String(shift)} cannot have this spectrum: power ${String(value)} in a mode`);
     return Math.sqrt(Math.max(value, 0));
   });
   return { shift, variance, filter };
