@@ -41,6 +41,12 @@ export function assess(study: Study, combined: Combined): Assessed {
   };
 }
 
+/** A combination of which only values and uncertainties are wanted, not statuses. */
+export function withoutViews(combined: Combined): Assessed {
+  const nothing = combined.active.flatMap(() => [null, null]);
+  return { combined, convergence: null, limits: nothing, splits: nothing, noisy: false, needed: null };
+}
+
 /** The error of one parameter in one combination. */
 export function errorOf(study: Study, assessed: Assessed, parameter: number, kind: ErrorKind): Estimate {
   const { combined } = assessed;

@@ -4,7 +4,7 @@ import type { CholeskyFactor } from '../linalg/cholesky.js';
 import { add, zeros } from '../linalg/small.js';
 import type { Small } from '../linalg/small.js';
 import type { Combined } from './combined.js';
-import { restricted, whole } from './combined.js';
+import { restricted } from './combined.js';
 import { partFisher } from './fisher.js';
 import type { LogErrors } from './log-errors.js';
 import { solve } from './log-errors.js';
@@ -16,61 +16,87 @@ export interface WithoutBlock {
   readonly probe: string;
   readonly block: string;
   readonly entries: number;
-  readonly logs: LogErrors | null;
+  readonly logs: LogErrors;
 }
 
 /**
  * Errors with each block left out of the joint data vector. The precision matrix of what is kept is
  * Q_kk - Q_kB Q_BB^-1 Q_Bk with Q = S^-1, so that F loses g_B^T Q_BB^-1 g_B with g = S^-1 d: one inverse of the block, and no
  * new factor of the rest. Both the raw matrix and its noise are quadratic in the derivatives, so the same holds for the corrected one.
- * A combination of one block has nothing left without it: logs are null.
+ * A combination of one block has only its priors left without it.
  * Source: methods, section 6; the inverse of a partitioned matrix (Schur complement).
  */
 export function withoutBlocks(combined: Combined): readonly WithoutBlock[] {
   if (!combined.assessable) return [];
-  return combined.parts.flatMap((part) => {
+  const fishers = combined.parts.map((part) => last(partFisher(part)).corrected);
+  const solved = combined.parts.map(precisionTimes);
+  return combined.parts.flatMap((part, index) => {
     const blocks = new Map(part.entries.map(({ column }) => [`${column.probe}/${column.block}`, column]));
     return [...blocks.values()].map(({ probe, block }) => {
       const places = part.entries.flatMap(({ column }, i) => (column.probe === probe && column.block === block ? [i] : []));
-      return { probe, block, entries: places.length, logs: logsWithout(combined, part, Int32Array.from(places)) };
+      return { probe, block, entries: places.length, logs: logsWithout(combined, fishers, solved, index, Int32Array.from(places)) };
     });
   });
 }
 
-function logsWithout(combined: Combined, part: Part, places: Int32Array): LogErrors | null {
-  const fishers: Small[] = combined.parts.map((other) => last(partFisher(other)).corrected);
-  const index = combined.parts.indexOf(part);
-  fishers[index] = places.length === part.entries.length ? zeros(part.exact.rows) : lessBlock(part, fishers[index]!, places);
-  const total = add([1, combined.prior], ...fishers.map((fisher) => [1, restricted(fisher, combined.active)] as const));
-  const { corrected } = whole(combined);
-  return corrected === null ? null : solve(total).logs;
+function logsWithout(
+  combined: Combined,
+  fishers: readonly Small[],
+  solved: readonly Solution[],
+  index: number,
+  places: Int32Array,
+): LogErrors {
+  const part = combined.parts[index]!;
+  const all = places.length === part.entries.length;
+  const rest = all ? zeros(part.exact.rows) : lessBlock(part, solved[index]!, fishers[index]!, places);
+  const terms = fishers.map((fisher, k) => [1, restricted(k === index ? rest : fisher, combined.active)] as const);
+  return solve(add([1, combined.prior], ...terms)).logs;
 }
 
 function last<T>(values: readonly T[]): T {
   return values[values.length - 1]!;
 }
 
-function lessBlock(part: Part, fisher: Small, places: Int32Array): Small {
+/** S^-1 times every derivative row of a part. */
+interface Solution {
+  readonly exact: Matrix;
+  readonly strands: readonly { readonly mean: Matrix; readonly centred: Matrix }[];
+}
+
+function precisionTimes(part: Part): Solution {
+  const solve = (matrix: Matrix): Matrix => {
+    const data = new Float64Array(matrix.data.length);
+    for (let start = 0; start < data.length; start += matrix.columns) {
+      data.set(unwhiten(part.factor, matrix.data.subarray(start, start + matrix.columns), matrix.columns), start);
+    }
+    return { ...matrix, data };
+  };
+  return {
+    exact: solve(part.exact),
+    strands: part.strands.map(({ mean, centred }) => ({
+      mean: solve({ data: mean, rows: 1, columns: mean.length }),
+      centred: solve(centred),
+    })),
+  };
+}
+
+function lessBlock(part: Part, solution: Solution, fisher: Small, places: Int32Array): Small {
   const { realisations } = part.covariance;
   const kept = precisionFactor(realisations, part.entries.length - places.length);
   const all = precisionFactor(realisations, part.entries.length);
   const block = precisionFactor(realisations, places.length);
-  const lost = last(partFisher(blockPart(part, places))).corrected;
+  const lost = last(partFisher(blockPart(part, solution, places))).corrected;
   return add([kept / all, fisher], [-kept / block, lost]);
 }
 
 /** A part over the block alone, in the metric Q_BB^-1 of S^-1 times the derivatives. */
-function blockPart(part: Part, places: Int32Array): Part {
+function blockPart(part: Part, solution: Solution, places: Int32Array): Part {
   const factor = blockFactor(part.factor, places);
   const through = (matrix: Matrix): Matrix => {
     const size = places.length;
     const data = new Float64Array(matrix.rows * size);
     for (let row = 0; row < matrix.rows; row += 1) {
-      const whitened = matrix.data.subarray(row * matrix.columns, (row + 1) * matrix.columns);
-      const solution = unwhiten(part.factor, whitened, matrix.columns);
-      places.forEach((place, k) => {
-        data[row * size + k] = solution[place]!;
-      });
+      for (let k = 0; k < size; k += 1) data[row * size + k] = matrix.data[row * matrix.columns + places[k]!]!;
     }
     const block = { data, rows: matrix.rows, columns: size };
     whiten(factor, block);
@@ -80,11 +106,11 @@ function blockPart(part: Part, places: Int32Array): Part {
     ...part,
     prefixes: [places.length],
     entries: Array.from(places, (place) => part.entries[place]!),
-    exact: through(part.exact),
-    strands: part.strands.map((strand) => ({
+    exact: through(solution.exact),
+    strands: part.strands.map((strand, k) => ({
       ...strand,
-      mean: through({ data: strand.mean, rows: 1, columns: strand.mean.length }).data,
-      centred: through(strand.centred),
+      mean: through(solution.strands[k]!.mean).data,
+      centred: through(solution.strands[k]!.centred),
     })),
   };
 }

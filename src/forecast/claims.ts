@@ -40,6 +40,7 @@ function testClaim(study: Study, claim: Claim, assessed: ReadonlyMap<string, Ass
     raw: estimate.raw,
     estimate: estimate.corrected,
     relativeStandardError: estimate.relativeStandardError,
+    parts: estimate.parts,
     interval: estimate.interval,
     interval95: estimate.interval95,
     status: estimate.status,

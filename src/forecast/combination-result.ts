@@ -1,16 +1,14 @@
-import type { CombinationResult, ConvergenceResult } from '../results/schema.js';
+import type { CombinationResult } from '../results/schema.js';
 import type { Small } from '../linalg/small.js';
 import type { Combination, Study } from '../study/study.js';
-import type { Assessed, ErrorKind } from './assess.js';
+import type { Assessed } from './assess.js';
 import { errorOf } from './assess.js';
 import type { Combined } from './combined.js';
 import { quantityOf, whole } from './combined.js';
-import type { Convergence } from './convergence.js';
 import { inflationFactors } from './inflation.js';
 import type { Solved } from './log-errors.js';
 import type { Part } from './part.js';
 import { precisionFactor, wishartDegrees } from './precision.js';
-import { splitCount, splitShare } from './split.js';
 
 /** Everything that the results say about one combination by itself. */
 export function combinationResult(study: Study, assessed: Assessed): CombinationResult {
@@ -136,54 +134,4 @@ function notAssessable(study: Study, { parts }: Combined): string[] {
       ),
     ),
   ]);
-}
-
-/** Convergence of a combination as the results hold it; null without noise. */
-export function convergenceResult(study: Study, assessed: Assessed): ConvergenceResult | null {
-  const { convergence } = assessed;
-  if (convergence === null) return null;
-  const values = (parameter: number, kind: ErrorKind) =>
-    convergenceValues(convergence, quantityOf(assessed.combined, parameter, kind));
-  return {
-    realisations: [...convergence.realisations],
-    blocks: convergence.levels.map((blocks) => blocks.length),
-    splitShare,
-    splits: splitCount,
-    errors: Object.fromEntries(
-      study.parameters.map(({ name }, a) => [name, { marginalised: values(a, 'marginalised'), fixed: values(a, 'fixed') }]),
-    ),
-  };
-}
-
-function convergenceValues(convergence: Convergence, quantity: number | null): ConvergenceResult['errors'][string]['fixed'] {
-  const levels = convergence.levels.map((blocks) => ({
-    raw: present(blocks.map(({ raw }) => (quantity === null ? null : (raw[quantity] ?? null)))),
-    corrected: present(blocks.map(({ corrected }) => (quantity === null ? null : (corrected[quantity] ?? null)))),
-    blocks: blocks.length,
-  }));
-  const fit = quantity === null ? null : (convergence.fits[quantity] ?? null);
-  const whole = (values: readonly number[], blocks: number): number | null => (values.length === blocks ? mean(values) : null);
-  return {
-    raw: levels.map(({ raw, blocks }) => whole(raw, blocks)),
-    rawScatter: levels.map(({ raw, blocks }) => (raw.length === blocks ? scatter(raw) : null)),
-    corrected: levels.map(({ corrected, blocks }) => whole(corrected, blocks)),
-    correctedScatter: levels.map(({ corrected, blocks }) => (corrected.length === blocks ? scatter(corrected) : null)),
-    determined: levels.map(({ corrected }) => corrected.length),
-    fit: fit === null ? null : { limit: Math.exp(fit.logLimit), b: fit.b },
-  };
-}
-
-function present(logs: readonly (number | null)[]): readonly number[] {
-  return logs.flatMap((log) => (log === null ? [] : [Math.exp(log)]));
-}
-
-function mean(values: readonly number[]): number {
-  return values.reduce((sum, value) => sum + value, 0) / values.length;
-}
-
-/** Standard deviation between blocks; null for a single one. */
-function scatter(values: readonly number[]): number | null {
-  if (values.length < 2) return null;
-  const centre = mean(values);
-  return Math.sqrt(values.reduce((sum, value) => sum + (value - centre) ** 2, 0) / (values.length - 1));
 }

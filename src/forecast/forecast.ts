@@ -2,12 +2,14 @@ import type { Improvement, Results } from '../results/schema.js';
 import type { Scan, Study } from '../study/study.js';
 import type { Assessed } from './assess.js';
 import { assess, ratioOf } from './assess.js';
+import { beliefResults } from './belief.js';
 import { buildParts } from './build-parts.js';
 import { runChecks } from './checks/all.js';
 import { testClaims, verdictRules } from './claims.js';
-import { combinationResult, convergenceResult } from './combination-result.js';
+import { combinationResult } from './combination-result.js';
 import type { Combined } from './combined.js';
 import { combine, quantityOf } from './combined.js';
+import { convergenceResult } from './convergence-result.js';
 import { scanOf } from './cuts.js';
 import { dataCorrelation } from './data-correlation.js';
 import { scanResult } from './scan.js';
@@ -30,17 +32,21 @@ export function forecast(study: Study, generator: Results['generator']): Results
     combine(study, combination, buildParts(study, combination, suites, scan)),
   );
   const assessed = new Map(combined.map((one) => [one.combination.name, assess(study, one)]));
+  const combinations = mapped(assessed, (one) => combinationResult(study, one));
+  const gains = improvements(study, assessed);
+  const claims = testClaims(study, assessed);
   return {
     format: 1,
     generator,
     ...describeStudy(study, suites),
-    combinations: mapped(assessed, (one) => combinationResult(study, one)),
-    improvements: improvements(study, assessed),
+    combinations,
+    improvements: gains,
     scan: scans(study, scan, assessed),
-    convergence: mapped(assessed, (one) => convergenceResult(study, one)),
+    convergence: mapped(assessed, (one) => convergenceResult(study, one, assessed.get(study.baseline)!)),
     vectors: vectorResults(study, suites),
     dataCorrelation: present(Object.fromEntries(suites.map((suite) => [suite.name, dataCorrelation(suite)]))),
-    claims: testClaims(study, assessed),
+    ...beliefResults(study, suites, assessed, { combinations, improvements: gains, claims }),
+    claims,
     checks: runChecks({ study, suites, combined }),
     rules: {
       statuses: statusRules.map((rule) => ({ ...rule })),

@@ -3,14 +3,14 @@ import type { Matrix } from '../arrays/rows.js';
 import type { Part, PartStrand } from './part.js';
 
 /**
- * A part whose added entries respond to nothing: their derivatives are exactly zero, their covariance with the baseline's
+ * A part, at its full length only, whose added entries respond to nothing: their derivatives are exactly zero, their covariance with the baseline's
  * entries stays. What such a combination still gains, it gains by predicting the baseline's noise.
  */
 export function silenced(part: Part): Part {
   const plainExact = masked(part, part.plainExact);
   const exact = { ...plainExact, data: Float64Array.from(plainExact.data) };
   whiten(part.factor, exact);
-  return { ...part, plainExact, exact, strands: part.strands.map((strand) => silencedStrand(part, strand)) };
+  return { ...part, prefixes: [part.entries.length], plainExact, exact, strands: part.strands.map((strand) => silencedStrand(part, strand)) };
 }
 
 function silencedStrand(part: Part, strand: PartStrand): PartStrand {

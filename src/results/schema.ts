@@ -1,14 +1,13 @@
 import { z } from 'zod';
+import { attribution, budget, derivativeTest, gaussianity } from './belief-schema.js';
+import { dataCorrelation, derivative, vector } from './data-schema.js';
+import { interval, matrix, number, optionalNumber, perParameter } from './primitives.js';
 
 /**
  * The waist of the program: every number that is shown anywhere, as plain data. Left of it numbers are made, right of
  * it they are shown. A number that could not be determined is null, and the `status` and `why` beside it say so.
  */
 
-const number = z.number();
-const optionalNumber = z.number().nullable();
-const matrix = z.array(z.array(z.number()));
-const interval = z.tuple([number, number]).nullable();
 
 export const statusSchema = z.enum(['settled', 'correctable', 'unsettled', 'undetermined', 'not assessable']);
 export const verdictSchema = z.enum(['supported', 'contradicted', 'too close to call', 'not settled', 'not assessable']);
@@ -51,8 +50,6 @@ const improvement = z.object({
   shamWhy: z.string().nullable(),
 });
 
-const both = <T extends z.ZodType>(inner: T) => z.object({ marginalised: inner, fixed: inner });
-const perParameter = <T extends z.ZodType>(inner: T) => z.record(z.string(), both(inner));
 
 const suitePart = z.object({
   suite: z.string(),
@@ -156,38 +153,8 @@ const convergence = z.object({
   splitShare: number,
   splits: number,
   errors: perParameter(convergenceValues),
-});
-
-const derivative = z.object({
-  kind: z.enum(['nodes', 'per realisation', 'exact', 'mean', 'insensitive']),
-  nodes: z.array(z.object({ at: number, weight: number, realisations: number, source: z.string() })),
-  matching: z.enum(['by seed', 'by index', 'unmatched', 'partly matched', 'does not apply']),
-  realisations: optionalNumber,
-  /** Correlation between the first and last node over common realisations, median over entries. */
-  nodeCorrelation: optionalNumber,
-  /** Noise variance if unmatched over noise variance as matched, median over entries. */
-  noiseReduction: optionalNumber,
-});
-
-const vector = z.object({
-  run: z.string(),
-  label: z.string(),
-  coordinate: z.string().nullable(),
-  unit: z.string(),
-  /** Coordinates; the index from 1 where there is none. */
-  values: z.array(number),
-  /** Null where the run gives moments only. */
-  mean: z.array(number).nullable(),
-  standardDeviation: z.array(number),
-  derivatives: z.record(z.string(), z.object({ value: z.array(number), standardError: z.array(number).nullable() })),
-});
-
-const dataCorrelation = z.object({
-  /** Entries averaged into one cell, each way. */
-  entriesPerCell: number,
-  groups: z.array(z.object({ probe: z.string(), block: z.string(), label: z.string(), cells: number, entries: number })),
-  /** Mean correlation in each cell, -1 to 1. */
-  cells: matrix,
+  /** The same of the gain over the baseline, from the same blocks; null for the baseline itself. */
+  improvements: perParameter(convergenceValues).nullable().optional(),
 });
 
 const claim = z.object({
@@ -204,6 +171,7 @@ const claim = z.object({
   raw: optionalNumber,
   estimate: optionalNumber,
   relativeStandardError: optionalNumber,
+  parts: z.object({ derivatives: optionalNumber, covariance: optionalNumber }),
   interval,
   interval95: interval,
   status: statusSchema,
@@ -263,6 +231,23 @@ export const resultsSchema = z.object({
   vectors: z.record(z.string(), z.record(z.string(), vector)),
   /** One a suite. */
   dataCorrelation: z.record(z.string(), dataCorrelation),
+  /** Every combination but the baseline. */
+  attribution: z.record(z.string(), attribution).optional(),
+  /** Marginalised errors and gains of target parameters, then claims. */
+  budget: z.array(budget).optional(),
+  derivativeTests: z.array(derivativeTest).optional(),
+  gaussianity: z.array(gaussianity).optional(),
+  /** Raw errors against the number of fiducial realisations, each with its own precision factor. */
+  covarianceConvergence: z
+    .record(z.string(), z.object({ realisations: z.array(number), errors: perParameter(z.array(optionalNumber)) }))
+    .optional(),
+  /** Corrected errors without the smallest eigen-directions of the data's correlation matrix. */
+  smallestDirections: z
+    .record(
+      z.string(),
+      z.object({ condition: number, removed: z.array(number), errors: perParameter(z.array(optionalNumber)) }),
+    )
+    .optional(),
   claims: z.array(claim),
   checks: z.array(check),
   /** The rules in force, for the report to print. */
