@@ -109,7 +109,7 @@ describe('the claims of a study', () => {
 
   it('carry the estimate they were tested on', () => {
     const [gain, error, outside, backwards] = results.claims;
-    const improvement = results.improvements['joint']!['p0']!.marginalised;
+    const improvement = results.improvements.joint!.p0!.marginalised;
     expect(gain).toMatchObject({
       id: 'p0-joint',
       against: 'base',
@@ -125,7 +125,7 @@ describe('the claims of a study', () => {
       status: improvement.status,
       why: improvement.why,
     });
-    expect(error).toMatchObject({ against: null, quantity: 'size', estimate: results.combinations['joint']!.errors['p1']!.fixed.corrected, verdict: 'supported' });
+    expect(error).toMatchObject({ against: null, quantity: 'size', estimate: results.combinations.joint!.errors.p1!.fixed.corrected, verdict: 'supported' });
     expect(outside).toMatchObject({ threshold: [1000, 2000], verdict: 'contradicted' });
     expect(backwards!.estimate).toBeCloseTo(1 / improvement.corrected!, 14);
     expect(backwards!.relativeStandardError).toBeCloseTo(improvement.relativeStandardError!, 14);

@@ -102,7 +102,7 @@ describe('convergence', () => {
 
   it('in the results gives the mean and scatter of the blocks, and counts those that have a value', () => {
     const study = gaussianStudy({ ...model, derivativeNoise: 1.2, derivatives: 24 }, 5);
-    const { marginalised } = forecastOf(study).convergence['joint']!.errors['p0']!;
+    const { marginalised } = forecastOf(study).convergence.joint!.errors.p0!;
     const levels = convergenceOf(combinedOf(study, 'joint'))!.levels;
     levels.forEach((blocks, k) => {
       const raw = blocks.map((block) => Math.exp(block.raw[0]!));

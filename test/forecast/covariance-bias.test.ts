@@ -36,7 +36,6 @@ function scores({ entries, parameters, fiducials }: Setting, studies: number) {
         'base',
       ),
     );
-  // A covariance that is the identity but for 1e-6 would need rows: the truth comes from so many that only the law's mean is left.
   const logs: number[] = [];
   const errors: number[] = [];
   for (let k = 0; k < studies; k += 1) {
@@ -65,7 +64,7 @@ function trueLog(responses: readonly Float64Array[]): number {
 
 const studies = 200;
 const few: Setting = { entries: 20, parameters: 2, fiducials: 200 };
-const many: Setting = { entries: 40, parameters: 15, fiducials: 250 };
+const many: Setting = { entries: 40, parameters: 25, fiducials: 250 };
 
 describe('an error from an estimated covariance and exact derivatives', () => {
   it.each([few, many])('scatters as its standard error says: %o', (setting) => {
@@ -87,7 +86,7 @@ describe('an error from an estimated covariance and exact derivatives', () => {
     expect(Math.abs(meanOf(logs) - truth - law)).toBeLessThan((4 * deviationOf(logs)) / Math.sqrt(studies) + law / 20);
   });
 
-  // OPEN: the bias above is 0.8 of a standard error here, and in no interval: about half of the intervals miss.
+  // OPEN: the bias above is 1.3 standard errors here, and in no interval: two thirds of the intervals miss.
   it.fails('has intervals that cover 63 to 80 % with many parameters', () => {
     expect(coverage(many)).toBeGreaterThan(0.63 - bound);
     expect(coverage(many)).toBeLessThan(0.8 + bound);

@@ -57,7 +57,7 @@ function expectScaled(found: Results, expected: Results, factor: (parameter: str
       for (const combination of ['base', 'joint']) {
         expectRatio(found.combinations[combination]!.errors[name]![kind], expected.combinations[combination]!.errors[name]![kind], factor(name), keys);
       }
-      expectRatio(found.improvements['joint']![name]![kind], expected.improvements['joint']![name]![kind], 1, keys);
+      expectRatio(found.improvements.joint![name]![kind], expected.improvements.joint![name]![kind], 1, keys);
     }
   }
 }
@@ -68,7 +68,7 @@ const one = (): number => 1;
 describe('a forecast', () => {
   it('is worth testing here: every error has a value and both kinds of noise', () => {
     for (const name of ['p0', 'p1']) {
-      const { parts, corrected } = original.combinations['joint']!.errors[name]!.marginalised;
+      const { parts, corrected } = original.combinations.joint!.errors[name]!.marginalised;
       expect(corrected).toBeGreaterThan(0);
       expect(parts.derivatives).toBeGreaterThan(0.01);
       expect(parts.covariance).toBeGreaterThan(0.01);
@@ -86,7 +86,7 @@ describe('a forecast', () => {
     const found = forecastOf({ ...study, runs: [scaled] });
     expectScaled(found, original, (name) => (name === 'p1' ? factor : 1));
     for (const name of ['p0', 'p1']) {
-      expect(found.improvements['joint']![name]!.marginalised.sham).toBeCloseTo(original.improvements['joint']![name]!.marginalised.sham!, 9);
+      expect(found.improvements.joint![name]!.marginalised.sham).toBeCloseTo(original.improvements.joint![name]!.marginalised.sham!, 9);
     }
   });
 
@@ -134,19 +134,19 @@ describe('a forecast', () => {
     // 1e6 beside a scatter of one: ten digits are left of the rows.
     const lifted = forecastOf(changedStudy(study, { fiducial: (rows) => realisations(allRows(rows).map((value) => value + 1e6), size, range(200, 1000)) }));
     for (const name of ['p0', 'p1']) {
-      expect(lifted.combinations['joint']!.errors[name]!.marginalised.corrected! / original.combinations['joint']!.errors[name]!.marginalised.corrected!).toBeCloseTo(1, 8);
+      expect(lifted.combinations.joint!.errors[name]!.marginalised.corrected! / original.combinations.joint!.errors[name]!.marginalised.corrected!).toBeCloseTo(1, 8);
     }
   });
 
   it('of a nuisance parameter that is known exactly is that with it fixed', () => {
     const known = forecastOf({ ...study, parameters: [parameter('p0'), parameter('p1', { role: 'nuisance', prior: 1e-6 })] });
     const alone = forecastOf({ ...study, parameters: [parameter('p0')] });
-    const { marginalised } = known.combinations['joint']!.errors['p0']!;
-    const fixed = known.combinations['joint']!.errors['p0']!.fixed;
+    const { marginalised } = known.combinations.joint!.errors.p0!;
+    const fixed = known.combinations.joint!.errors.p0!.fixed;
     // What a prior of 1e-6 leaves is its square over an error of about one.
     expect(marginalised.corrected! / fixed.corrected!).toBeCloseTo(1, 10);
-    expect(fixed.corrected! / alone.combinations['joint']!.errors['p0']!.marginalised.corrected!).toBeCloseTo(1, 10);
-    expect(marginalised.parts.derivatives! / alone.combinations['joint']!.errors['p0']!.marginalised.parts.derivatives!).toBeCloseTo(1, 8);
+    expect(fixed.corrected! / alone.combinations.joint!.errors.p0!.marginalised.corrected!).toBeCloseTo(1, 10);
+    expect(marginalised.parts.derivatives! / alone.combinations.joint!.errors.p0!.marginalised.parts.derivatives!).toBeCloseTo(1, 8);
   });
 
   it('is unmoved by a prior that says nothing', () => {
@@ -158,24 +158,24 @@ describe('a forecast', () => {
     const diagonal = forecastOf({ ...study, parameters: [parameter('p0', { prior: 0.5 }), parameter('p1', { prior: 0.25 })] });
     const full = forecastOf({ ...study, prior: { data: Float64Array.from([4, 0, 0, 16]), rows: 2, columns: 2 } });
     expectScaled(full, diagonal, one);
-    expect(diagonal.combinations['joint']!.fisher.prior).toEqual([[4, 0], [0, 16]]);
-    expect(full.combinations['joint']!.fisher.raw).toEqual(diagonal.combinations['joint']!.fisher.raw);
+    expect(diagonal.combinations.joint!.fisher.prior).toEqual([[4, 0], [0, 16]]);
+    expect(full.combinations.joint!.fisher.raw).toEqual(diagonal.combinations.joint!.fisher.raw);
   });
 
   it('has a covariance that is the inverse of Fisher plus prior, of a matrix that is not diagonal', () => {
-    const joint = forecastOf({ ...study, prior: { data: Float64Array.from([4, -3, -3, 9]), rows: 2, columns: 2 } }).combinations['joint']!;
+    const joint = forecastOf({ ...study, prior: { data: Float64Array.from([4, -3, -3, 9]), rows: 2, columns: 2 } }).combinations.joint!;
     for (const which of ['raw', 'corrected'] as const) {
       const fisher = joint.fisher[which]!;
       const inverse = joint.covariance[which]!;
       const product = (i: number, j: number): number => range(2).reduce((sum, k) => sum + (fisher[i]![k]! + joint.fisher.prior[i]![k]!) * inverse[k]![j]!, 0);
       expect(product(0, 0)).toBeCloseTo(1, 12);
       expect(product(0, 1)).toBeCloseTo(0, 12);
-      expect(joint.errors['p0']!.marginalised[which]).toBeCloseTo(Math.sqrt(inverse[0]![0]!), 12);
-      expect(joint.errors['p1']!.fixed[which]).toBeCloseTo(1 / Math.sqrt(fisher[1]![1]! + 9), 12);
+      expect(joint.errors.p0!.marginalised[which]).toBeCloseTo(Math.sqrt(inverse[0]![0]!), 12);
+      expect(joint.errors.p1!.fixed[which]).toBeCloseTo(1 / Math.sqrt(fisher[1]![1]! + 9), 12);
       expect(joint.correlation[which]![0]![1]).toBeCloseTo(inverse[0]![1]! / Math.sqrt(inverse[0]![0]! * inverse[1]![1]!), 12);
     }
     const product = joint.fisher.corrected![0]![0]! + 4;
-    expect(joint.globalCorrelation['p0']).toBeCloseTo(Math.sqrt(1 - 1 / (product * joint.covariance.corrected![0]![0]!)), 12);
+    expect(joint.globalCorrelation.p0).toBeCloseTo(Math.sqrt(1 - 1 / (product * joint.covariance.corrected![0]![0]!)), 12);
   });
 });
 
@@ -184,7 +184,7 @@ describe('volume', () => {
     const run = { ...study.runs[0]!, volume: 2, volumeUnit: '(Gpc/h)^3' };
     const scaled = forecastOf({ ...study, runs: [run], combinations: study.combinations.map((one) => ({ ...one, volume: 8 })) });
     expectScaled(scaled, original, () => 0.5);
-    expect(scaled.combinations['joint']!.suites[0]!.volumeScale).toBe(4);
+    expect(scaled.combinations.joint!.suites[0]!.volumeScale).toBe(4);
   });
 
   it('does not touch priors', () => {
@@ -192,8 +192,8 @@ describe('volume', () => {
     const run = { ...study.runs[0]!, volume: 1 };
     const scaled = forecastOf({ ...study, parameters, runs: [run], combinations: study.combinations.map((one) => ({ ...one, volume: 1e12 })) });
     const small = forecastOf({ ...study, parameters, runs: [run], combinations: study.combinations.map((one) => ({ ...one, volume: 1e-12 })) });
-    expect(scaled.combinations['joint']!.fisher.prior[0]![0]).toBeCloseTo(100, 12);
-    expect(small.combinations['joint']!.errors['p0']!.fixed.corrected).toBeCloseTo(0.1, 10);
+    expect(scaled.combinations.joint!.fisher.prior[0]![0]).toBeCloseTo(100, 12);
+    expect(small.combinations.joint!.errors.p0!.fixed.corrected).toBeCloseTo(0.1, 10);
   });
 });
 
@@ -213,8 +213,8 @@ describe('suites', () => {
     });
     for (const name of ['p0', 'p1']) {
       for (const kind of kinds) {
-        const single = both.combinations['joint']!.errors[name]![kind];
-        const double = both.combinations['twice']!.errors[name]![kind];
+        const single = both.combinations.joint!.errors[name]![kind];
+        const double = both.combinations.twice!.errors[name]![kind];
         expect(double.corrected! / single.corrected!).toBeCloseTo(Math.SQRT1_2, 10);
         expect(double.raw! / single.raw!).toBeCloseTo(Math.SQRT1_2, 10);
         // Each copy moves half of the information: the first order is exact for the covariance. The jackknife sees steps of half the size.

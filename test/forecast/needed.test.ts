@@ -57,7 +57,7 @@ describe('the realisations that an undetermined matrix needs', () => {
     const study = gaussianStudy(model, seed);
     const run = study.runs[0]!;
     if (run.data.kind === 'moments') throw new Error('the study has realisations');
-    const one = run.data.derivatives['p1']!;
+    const one = run.data.derivatives.p1!;
     if (one.kind !== 'per realisation') throw new Error('the study has one derivative a realisation');
     const { rows } = one.realisations;
     const scaled = { ...rows, read: (start: number, count: number) => rows.read(start, count).map((value) => 1e6 * value) };
@@ -68,7 +68,7 @@ describe('the realisations that an undetermined matrix needs', () => {
 
   it('stand in the sentence of the status, and beside it', () => {
     for (const seed of undetermined.slice(0, 5)) {
-      const { marginalised } = forecastOf(gaussianStudy(model, seed)).combinations['joint']!.errors['p0']!;
+      const { marginalised } = forecastOf(gaussianStudy(model, seed)).combinations.joint!.errors.p0!;
       const { derivativeRealisationsNeeded: needed } = marginalised;
       expect(marginalised.status).toBe('undetermined');
       expect(marginalised.why).toBe(

@@ -43,22 +43,22 @@ describe('a scan', () => {
         expect(found.entries[k]).toBe(alone.combinations[name]!.entries);
         for (const kind of ['marginalised', 'fixed'] as const) {
           for (const which of ['raw', 'corrected', 'relativeStandardError'] as const) {
-            expectSame(found.errors['p1']![kind][which][k]!, alone.combinations[name]!.errors['p1']![kind][which]);
+            expectSame(found.errors.p1![kind][which][k]!, alone.combinations[name]!.errors.p1![kind][which]);
           }
         }
       }
-      const improvement = alone.improvements['joint']!['p0']!.marginalised;
-      const found = scan['joint']!.improvements!['p0']!.marginalised;
+      const improvement = alone.improvements.joint!.p0!.marginalised;
+      const found = scan.joint!.improvements!.p0!.marginalised;
       expectSame(found.corrected[k]!, improvement.corrected);
       expectSame(found.relativeStandardError[k]!, improvement.relativeStandardError);
     });
-    expect(scan['base']!.improvements).toBeNull();
+    expect(scan.base!.improvements).toBeNull();
   });
 
   it('is undetermined where a cut has fewer entries than parameters, or none', () => {
     const { scan } = forecastOf(withScan({ coordinate: 'x', keep: 'below', at: [0, 1, 6] }));
-    const { marginalised, fixed } = scan['base']!.errors['p0']!;
-    expect(scan['base']!.entries).toEqual([0, 1, 6]);
+    const { marginalised, fixed } = scan.base!.errors.p0!;
+    expect(scan.base!.entries).toEqual([0, 1, 6]);
     expect(marginalised.status.slice(0, 2)).toEqual(['undetermined', 'undetermined']);
     expect(marginalised.corrected.slice(0, 2)).toEqual([null, null]);
     expect(fixed.status[0]).toBe('undetermined');
@@ -69,9 +69,9 @@ describe('a scan', () => {
   it('rests on priors alone where a cut leaves nothing', () => {
     const parameters = ['p0', 'p1'].map((name) => parameter(name, { prior: 0.5 }));
     const { scan } = forecastOf({ ...withScan({ coordinate: 'x', keep: 'below', at: [0, 6] }), parameters });
-    expect(scan['joint']!.errors['p0']!.marginalised.corrected[0]).toBeCloseTo(0.5, 14);
-    expect(scan['joint']!.errors['p0']!.marginalised.relativeStandardError[0]).toBe(0);
-    expect(scan['joint']!.improvements!['p0']!.marginalised.corrected[0]).toBe(1);
+    expect(scan.joint!.errors.p0!.marginalised.corrected[0]).toBeCloseTo(0.5, 14);
+    expect(scan.joint!.errors.p0!.marginalised.relativeStandardError[0]).toBe(0);
+    expect(scan.joint!.improvements!.p0!.marginalised.corrected[0]).toBe(1);
   });
 
   it('leaves out a combination without entries along its coordinate', () => {
@@ -83,11 +83,11 @@ describe('a scan', () => {
     };
     const { scan } = forecastOf(study);
     expect(Object.keys(scan)).toEqual(['base', 'joint']);
-    expect(scan['joint']!.entries).toEqual([7, 9]);
+    expect(scan.joint!.entries).toEqual([7, 9]);
   });
 
   it('ends in the errors of the whole where the last cut keeps everything', () => {
     const results = forecastOf(withScan({ coordinate: 'x', keep: 'below', at: [3, 6] }));
-    expect(results.scan['joint']!.errors['p0']!.marginalised.corrected[1]).toBe(results.combinations['joint']!.errors['p0']!.marginalised.corrected);
+    expect(results.scan.joint!.errors.p0!.marginalised.corrected[1]).toBe(results.combinations.joint!.errors.p0!.marginalised.corrected);
   });
 });

@@ -47,7 +47,7 @@ describe('the sham gain', () => {
   it('does not exist for a combination that shares nothing with the baseline, and the results say why', () => {
     const study = { ...gaussianStudy(model, 4), combinations: [combination('base', ['base']), combination('joint', ['added'])] };
     expect(shamGains(combinedOf(study, 'joint'), 'seed')).toEqual([null, null, null, null]);
-    expect(forecastOf(study).improvements['joint']!['p0']!.marginalised).toMatchObject({
+    expect(forecastOf(study).improvements.joint!.p0!.marginalised).toMatchObject({
       sham: null,
       shamInterval: null,
       shamWhy: 'Without the added entries there is no error to compare with: the combination rests on them alone.',

@@ -81,7 +81,7 @@ describe('the split estimate', () => {
 
 describe('statuses that hang on the split estimate', () => {
   const study = gaussianStudy({ ...model, fiducials: 2000, derivatives: 400 }, 8);
-  const statusIn = (of: Study, name = 'joint') => forecastOf(of).combinations[name]!.errors['p0']!.marginalised.status;
+  const statusIn = (of: Study, name = 'joint') => forecastOf(of).combinations[name]!.errors.p0!.marginalised.status;
 
   it('are settled where all is well', () => {
     expect(statusIn(study)).toBe('settled');

@@ -16,7 +16,7 @@ function studyOf(derivative: EnsembleDerivative, fiducial = realisations(normalR
   });
 }
 
-const vectorOf = (study: Study) => vectorResults(study, suitesOf(study))['base']!['only']!;
+const vectorOf = (study: Study) => vectorResults(study, suitesOf(study)).base!.only!;
 
 describe('a data vector', () => {
   it('has mean and standard deviation of the fiducial rows', () => {
@@ -32,7 +32,7 @@ describe('a data vector', () => {
 
   it('has the standard error of a mean for one derivative a realisation: s/sqrt(N)', () => {
     const rows = normalRows(25, size, 2);
-    const derivative = vectorOf(studyOf({ kind: 'per realisation', realisations: realisations(rows, size) })).derivatives['p0']!;
+    const derivative = vectorOf(studyOf({ kind: 'per realisation', realisations: realisations(rows, size) })).derivatives.p0!;
     range(size).forEach((i) => {
       const column = range(25).map((k) => rows[k * size + i]!);
       expect(derivative.value[i]).toBeCloseTo(meanOf(column), 13);
@@ -41,9 +41,9 @@ describe('a data vector', () => {
   });
 
   it('has no noise for exact and insensitive derivatives', () => {
-    const exact = vectorOf(studyOf({ kind: 'exact', values: Float64Array.from([1, 2, 3]) })).derivatives['p0']!;
+    const exact = vectorOf(studyOf({ kind: 'exact', values: Float64Array.from([1, 2, 3]) })).derivatives.p0!;
     expect(exact).toEqual({ value: [1, 2, 3], standardError: [0, 0, 0] });
-    expect(vectorOf(studyOf({ kind: 'insensitive' })).derivatives['p0']).toEqual({ value: [0, 0, 0], standardError: [0, 0, 0] });
+    expect(vectorOf(studyOf({ kind: 'insensitive' })).derivatives.p0).toEqual({ value: [0, 0, 0], standardError: [0, 0, 0] });
   });
 
   it('of moments has the error that the given noise implies, and none where it is not given', () => {
@@ -60,18 +60,18 @@ describe('a data vector', () => {
     const vector = vectorOf(study);
     expect(vector.standardDeviation).toEqual([2, 3]);
     expect(vector.mean).toBeNull();
-    expect(vector.derivatives['p0']).toEqual({ value: [5, 6], standardError: [1, 2] });
-    expect(vector.derivatives['p1']!.standardError).toBeNull();
-    expect(vector.derivatives['p2']!.standardError).toBeNull();
+    expect(vector.derivatives.p0).toEqual({ value: [5, 6], standardError: [1, 2] });
+    expect(vector.derivatives.p1!.standardError).toBeNull();
+    expect(vector.derivatives.p2!.standardError).toBeNull();
   });
 
   it('gives each block its own entries, wherever they stand', () => {
     const columns = ['a', 'b', 'a'].map((block, i) => ({ ...columnsOf('base', 3)[i]!, block, label: `the ${block}`, coordinate: block === 'b' ? null : columnsOf('base', 3)[i]!.coordinate }));
     const base = studyOf({ kind: 'exact', values: Float64Array.from([1, 2, 3]) });
-    const vectors = vectorResults({ ...base }, suitesOf({ ...base, runs: [{ ...base.runs[0]!, columns }] }))['base']!;
-    expect(vectors['a']!.derivatives['p0']!.value).toEqual([1, 3]);
-    expect(vectors['a']!.values).toEqual([1, 3]);
-    expect(vectors['b']).toMatchObject({ coordinate: null, unit: '', values: [1], label: 'the b' });
+    const vectors = vectorResults({ ...base }, suitesOf({ ...base, runs: [{ ...base.runs[0]!, columns }] })).base!;
+    expect(vectors.a!.derivatives.p0!.value).toEqual([1, 3]);
+    expect(vectors.a!.values).toEqual([1, 3]);
+    expect(vectors.b).toMatchObject({ coordinate: null, unit: '', values: [1], label: 'the b' });
   });
 
   // OPEN: a run that no combination uses may have one row; its scatter is then not a number, and results.json would not be valid.
@@ -102,7 +102,7 @@ describe('the standard error of a derivative', () => {
         combinations: [combination('base', ['base'])],
         runs: [ensembleRun('run', columnsOf('base', 1), realisations(normalRows(5, 1, 1), 1, range(5)), { p0: nodes })],
       });
-      const derivative = vectorOf(study).derivatives['p0']!;
+      const derivative = vectorOf(study).derivatives.p0!;
       values.push(derivative.value[0]!);
       variances.push(derivative.standardError![0]! ** 2);
     }
