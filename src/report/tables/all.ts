@@ -1,0 +1,36 @@
+import { checks } from './checks.js';
+import { claims } from './claims.js';
+import { combinations } from './combinations.js';
+import { globalCorrelations } from './degeneracies.js';
+import { errors, nuisanceErrors, parameters } from './errors.js';
+import { fixedImprovements, improvements, nuisanceImprovements } from './improvements.js';
+import { derivatives, factors } from './methods.js';
+import { inputs, runs } from './provenance.js';
+import { responses } from './responses.js';
+import { fixedScan, scan } from './scan.js';
+import type { TableMaker } from './table.js';
+import { gainViews, statuses, verdicts, views } from './views.js';
+
+export const tableMakers: Readonly<Record<string, TableMaker>> = {
+  checks,
+  claims,
+  combinations,
+  derivatives,
+  errors,
+  'errors-nuisance': nuisanceErrors,
+  factors,
+  'global-correlations': globalCorrelations,
+  improvements,
+  'improvements-fixed': fixedImprovements,
+  'improvements-nuisance': nuisanceImprovements,
+  inputs,
+  parameters,
+  responses,
+  runs,
+  scan,
+  'scan-fixed': fixedScan,
+  statuses,
+  verdicts,
+  views,
+  'views-gains': gainViews,
+};

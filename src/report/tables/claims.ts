@@ -1,0 +1,49 @@
+import { asGiven, roundTo, significant, withInterval } from '../../results/rounding.js';
+import type { ClaimResult } from '../../results/schema.js';
+import { say } from '../markdown/nodes.js';
+import { cleanInline } from '../markdown/clean.js';
+import { combinationLabel, parameterLabel } from '../words/labels.js';
+import { noNumber, sign } from '../words/values.js';
+import type { TableMaker } from './table.js';
+import { numbers, words } from './table.js';
+
+/** Every claim with the numbers behind its verdict. */
+export const claims: TableMaker = (results) => ({
+  id: 'claims',
+  caption: say`The claims, tested one-sided at 95 % on the corrected value with its whole uncertainty.`,
+  columns: [words('Claim'), words('Of'), words('Claimed'), numbers('Raw'), numbers('Corrected (68 % interval)'), numbers('95 % interval'), words('Verdict')],
+  rows: results.claims.map((claim) => [
+    cleanInline(claim.text),
+    say`${parameterLabel(results, claim.parameter)}, ${combinationLabel(results, claim.combination)}, ${claim.error}`,
+    `${claim.quantity} ${thresholdOf(claim)}`,
+    rawOf(claim),
+    estimateOf(claim),
+    claim.interval95 === null || claim.estimate === null ? noNumber(claim.status) : interval95Of(claim),
+    sign(claim.verdict),
+  ]),
+});
+
+export function thresholdOf({ test, threshold }: ClaimResult): string {
+  if (typeof threshold === 'number') return `${test} ${asGiven(threshold)}`;
+  return `between ${asGiven(threshold[0])} and ${asGiven(threshold[1])}`;
+}
+
+/** The standard error in the unit of the estimate: it sets the digits. */
+function errorOf(claim: ClaimResult): number | null {
+  return claim.estimate === null || claim.relativeStandardError === null ? null : claim.estimate * claim.relativeStandardError;
+}
+
+export function rawOf(claim: ClaimResult): string {
+  if (claim.raw === null) return 'does not exist';
+  return claim.estimate === null ? significant(claim.raw, 2) : roundTo(claim.raw, errorOf(claim));
+}
+
+export function estimateOf(claim: ClaimResult): string {
+  return claim.estimate === null ? noNumber(claim.status) : withInterval(claim.estimate, errorOf(claim), claim.interval);
+}
+
+export function interval95Of(claim: ClaimResult): string {
+  const [low, high] = claim.interval95 ?? [Number.NaN, Number.NaN];
+  const error = errorOf(claim);
+  return `${roundTo(low, error)} to ${roundTo(high, error)}`;
+}

@@ -1,0 +1,54 @@
+import { roundTo, significant } from '../../results/rounding.js';
+import type { Improvement, Results } from '../../results/schema.js';
+import { say } from '../markdown/nodes.js';
+import { combinationLabel, nuisances, parameterLabel, targets } from '../words/labels.js';
+import { corrected, raw, sign } from '../words/values.js';
+import type { ReportTable, TableMaker } from './table.js';
+import { numbers, words } from './table.js';
+
+type Kind = 'marginalised' | 'fixed';
+
+const columns = [
+  words('Parameter'),
+  words('Combination'),
+  numbers('Raw'),
+  numbers('Sham (noise alone)'),
+  numbers('Corrected (68 % interval)'),
+  words('Status'),
+];
+
+export const improvements: TableMaker = (results) =>
+  of(results, targets(results), 'marginalised', {
+    id: 'improvements',
+    caption: say`Improvement of the marginalised errors: error of ${combinationLabel(results, results.study.baseline)} over error of the combination; above 1 is better.`,
+  });
+
+export const fixedImprovements: TableMaker = (results) =>
+  of(results, targets(results), 'fixed', {
+    id: 'improvements-fixed',
+    caption: say`The same with all other parameters fixed: what the responses gain, without broken degeneracies.`,
+  });
+
+export const nuisanceImprovements: TableMaker = (results) =>
+  of(results, nuisances(results), 'marginalised', {
+    id: 'improvements-nuisance',
+    caption: say`Improvement of the marginalised errors of the nuisance parameters.`,
+  });
+
+function of(results: Results, parameters: readonly string[], kind: Kind, head: Pick<ReportTable, 'id' | 'caption'>): ReportTable {
+  const rows = parameters.flatMap((name) =>
+    Object.entries(results.improvements).flatMap(([combination, found]) => {
+      const gain = found[name]?.[kind];
+      if (gain === undefined) return [];
+      return [[parameterLabel(results, name), combinationLabel(results, combination), raw(gain), sham(gain), corrected(gain), sign(gain.status)]];
+    }),
+  );
+  return { ...head, columns, rows };
+}
+
+/** Rounded as its own spread allows. */
+export function sham(gain: Improvement): string {
+  if (gain.sham === null) return 'none';
+  if (gain.shamInterval === null) return significant(gain.sham);
+  return roundTo(gain.sham, (gain.shamInterval[1] - gain.shamInterval[0]) / 2);
+}
