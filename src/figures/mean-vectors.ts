@@ -1,0 +1,66 @@
+import type { Results, VectorResult } from '../results/schema.js';
+import type { Drawing } from './drawing.js';
+import { compose, finish } from './drawing.js';
+import type { Figure } from './figure.js';
+import { axisLabel, blockLabel, shortened } from './labels.js';
+import { lookOf, quiet } from './palette.js';
+import { gridFor, gridHeight, pageWidth, placed, tick } from './panels.js';
+import { isLogarithmic } from './responses.js';
+
+interface Block {
+  readonly title: string;
+  readonly vector: VectorResult;
+}
+
+/** Mean data vector of every block with the scatter of one realisation. */
+export function meanVectors(results: Results, drawing: Drawing): readonly Figure[] {
+  const blocks = Object.entries(results.vectors).flatMap(([probe, all]) =>
+    Object.entries(all).flatMap(([block, vector]) => {
+      const label = results.probes[probe]?.label ?? probe;
+      return vector.mean === null ? [] : [{ title: `${label}, ${vector.label === '' ? block : blockLabel(vector.label)}`, vector }];
+    }),
+  );
+  if (blocks.length === 0) return [];
+  const grid = gridFor(blocks.length, 170, 30, 3);
+  const svgs = blocks.map((block) => panel(drawing, block, grid.width, grid.height));
+  const notes = [{ x: 12, y: 18, text: 'mean over the fiducial realisations; band: one standard deviation of one realisation', colour: quiet.light }];
+  const svg = compose(drawing, { width: pageWidth, height: gridHeight(grid, blocks.length), panels: placed(grid, svgs), notes });
+  return [
+    finish(svg, {
+      name: 'mean-vectors',
+      title: 'Mean data vector',
+      alternative: blocks.map(({ title, vector }) => describe(title, vector)).join(' '),
+      caption: 'Mean data vector with a band of one standard deviation of one realisation: what was measured, before any derivative. A kink or an empty bin here shows up in everything below.',
+    }),
+  ];
+}
+
+function panel({ document, plot }: Drawing, { title, vector }: Block, width: number, height: number): Element {
+  const points = vector.values.map((at, i) => {
+    const [mean, deviation] = [vector.mean![i]!, vector.standardDeviation[i]!];
+    return { at, mean, low: mean - deviation, high: mean + deviation };
+  });
+  const positive = points.every(({ low }) => low > 0) && Math.max(...points.map(({ mean }) => mean)) / Math.min(...points.map(({ mean }) => mean)) > 30;
+  const { colour } = lookOf(0);
+  return plot.plot({
+    document,
+    width,
+    height,
+    marginLeft: 56,
+    marginRight: 10,
+    marginTop: 28,
+    marginBottom: 38,
+    x: { label: axisLabel(vector.coordinate ?? 'entry', vector.unit), labelAnchor: 'center', labelArrow: 'none', ticks: 4, tickFormat: tick, type: isLogarithmic(vector) ? 'log' : 'linear' },
+    y: { label: null, ticks: 5, tickFormat: tick, type: positive ? 'log' : 'linear' },
+    marks: [
+      plot.areaY(points, { x: 'at', y1: 'low', y2: 'high', fill: colour, fillOpacity: 0.22 }),
+      plot.line(points, { x: 'at', y: 'mean', stroke: colour, strokeWidth: 1.6 }),
+      plot.text([shortened(title, 38)], { frameAnchor: 'top', dy: -16, fontWeight: 'bold', fontSize: 11 }),
+    ],
+  });
+}
+
+function describe(title: string, { mean, values }: VectorResult): string {
+  const [low, high] = [Math.min(...mean!), Math.max(...mean!)];
+  return `${title}: ${String(values.length)} entries, means from ${low.toPrecision(3)} to ${high.toPrecision(3)}.`;
+}
