@@ -53,6 +53,11 @@ export function significant(value: number, digits: number = plainDigits): string
   return withDecimals([value], decimalsOf(value, digits))[0]!;
 }
 
+/** At most `digits` digits, no zeros at the end: a factor of 10 is "10", a weight of 22.222 is "22.22". */
+export function compact(value: number, digits = 4): string {
+  return asGiven(Number(value.toPrecision(digits)));
+}
+
 /** The number as it was given, in the fewest digits that read back the same: 0.3 is "0.3". */
 export function asGiven(value: number): string {
   const text = Object.is(value, -0) ? '0' : String(value);
@@ -102,6 +107,6 @@ function grouped(text: string): string {
 const superscripts = ['⁰', '¹', '²', '³', '⁴', '⁵', '⁶', '⁷', '⁸', '⁹'];
 
 function powerOfTen(exponent: number): string {
-  const digits = [...String(Math.abs(exponent))].map((digit) => superscripts[Number(digit)]!).join('');
+  const digits = String(Math.abs(exponent)).replace(/\d/g, (digit) => superscripts[Number(digit)]!);
   return `${thinSpace}×${thinSpace}10${exponent < 0 ? '⁻' : ''}${digits}`;
 }

@@ -21,7 +21,7 @@ export const contents: DirectiveKind = {
 
 function sectionNames(scope: Scope): readonly string[] {
   return (scope.pages.get('report')?.children ?? []).flatMap((node) =>
-    node.type === 'leafDirective' && node.name === 'section' ? [node.attributes?.['name'] ?? ''] : [],
+    node.type === 'leafDirective' && node.name === 'section' ? [node.attributes?.name ?? ''] : [],
   );
 }
 
@@ -31,5 +31,5 @@ function entry(name: string, scope: Scope) {
   const title = heading === undefined ? name : toString(heading);
   const link = { type: 'link' as const, url: `#${slug(title)}`, title: null, children: say`${title}` };
   const state = Object.hasOwn(sectionStates, name) ? sectionStates[name]!(scope.results) : null;
-  return state === null ? [link] : say`${link} ${marked(`(${state})`, 'state')}`;
+  return state === null ? [link] : say`${link}${marked(': ', 'colon')}${marked(state, 'state')}`;
 }

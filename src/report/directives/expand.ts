@@ -8,8 +8,9 @@ import { named, TemplateError } from './template-error.js';
 export function expand(nodes: readonly Nodes[], scope: Scope): Nodes[] {
   return nodes.flatMap((node): Nodes[] => {
     if (node.type === 'containerDirective' || node.type === 'leafDirective' || node.type === 'textDirective') return expandDirective(node, scope);
-    const { position: _, ...bare } = node;
-    return ['children' in node ? ({ ...bare, children: expand(node.children, scope) } as Nodes) : (bare as Nodes)];
+    const bare: Nodes = { ...node };
+    delete bare.position;
+    return ['children' in bare ? ({ ...bare, children: expand(bare.children, scope) } as Nodes) : bare];
   });
 }
 

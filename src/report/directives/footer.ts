@@ -1,4 +1,4 @@
-import type { BlockContent, Nodes } from 'mdast';
+import type { BlockContent } from 'mdast';
 import type { Frame } from '../markdown/nodes.js';
 import type { DirectiveKind } from './directive.js';
 
@@ -10,7 +10,7 @@ export const footer: DirectiveKind = {
     const frame: Frame = {
       type: 'frame',
       data: { hName: 'footer' },
-      children: scope.expand(directive.children as readonly Nodes[], scope) as BlockContent[],
+      children: scope.expand(directive.children, scope) as BlockContent[],
     };
     return [frame];
   },

@@ -62,7 +62,7 @@ function sections(nodes: readonly ElementContent[]): ElementContent[] {
   let section: Element | null = null;
   for (const node of nodes) {
     if (isElement(node, 'h2')) {
-      section = element('section', { ariaLabelledBy: [String(node.properties['id'])] }, []);
+      section = element('section', { ariaLabelledBy: [String(node.properties.id)] }, []);
       made.push(section);
     }
     if (section === null) made.push(node);

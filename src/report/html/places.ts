@@ -41,7 +41,7 @@ export function placeFigures(tree: Root, drawings: ReadonlyMap<string, string>):
     if (node.tagName !== 'figure' || !classesOf(node).includes('plot')) return;
     node.children = node.children.map((child): ElementContent => {
       const picture = child.type === 'element' ? child.children.find((one) => one.type === 'element' && one.tagName === 'img') : undefined;
-      const drawing = picture?.type === 'element' ? drawings.get(String(picture.properties['src'])) : undefined;
+      const drawing = picture?.type === 'element' ? drawings.get(String(picture.properties.src)) : undefined;
       if (drawing === undefined) return child;
       return element('div', { className: ['drawing'], tabIndex: 0, role: 'group', ariaLabel: 'Figure, scrolls where it is wider than the page' }, [
         { type: 'raw', value: drawing } as unknown as ElementContent,
@@ -56,7 +56,7 @@ export function placeTables(tree: Root): void {
     if (node.tagName !== 'table' || parent === undefined || index === undefined) return;
     const ours = parent.type === 'element' && parent.tagName === 'figure';
     for (const row of rowsOf(node)) scopeRow(row, ours);
-    const caption = ours ? `${String(parent.properties['id'])}-caption` : undefined;
+    const caption = ours ? `${String(parent.properties.id)}-caption` : undefined;
     const name: Element['properties'] = caption === undefined ? { ariaLabel: 'Table' } : { ariaLabelledBy: [caption] };
     if (caption !== undefined) node.properties = { ...node.properties, ariaLabelledBy: [caption] };
     replace(parent, index, element('div', { className: ['scroll'], role: 'region', tabIndex: 0, ...name }, [node]));
@@ -75,8 +75,9 @@ function rowsOf(table: Element): readonly Element[] {
 function scopeRow(row: Element, headed: boolean): void {
   const cells = row.children.filter((child): child is Element => child.type === 'element');
   cells.forEach((cell, i) => {
-    const right = cell.properties['align'] === 'right';
-    const { align: _, ...rest } = cell.properties;
+    const right = cell.properties.align === 'right';
+    const rest = { ...cell.properties };
+    delete rest.align;
     const column = cell.tagName === 'th';
     if (!column && headed && i === 0) cell.tagName = 'th';
     const scope = cell.tagName === 'th' ? { scope: column ? 'col' : 'row' } : {};

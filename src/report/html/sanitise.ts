@@ -30,5 +30,5 @@ const schema: NonNullable<Parameters<typeof rehypeSanitize>[0]> = {
 const sanitiser = unified().use(rehypeSanitize, schema).freeze();
 
 export function sanitise(tree: Root): Root {
-  return sanitiser.runSync(tree) as Root;
+  return sanitiser.runSync(tree);
 }

@@ -1,5 +1,5 @@
 import { toString } from 'mdast-util-to-string';
-import type { Definition, Nodes, PhrasingContent, RootContent } from 'mdast';
+import type { Definition, Nodes, Paragraph, PhrasingContent, RootContent } from 'mdast';
 import { visit } from 'unist-util-visit';
 import { mathTree } from '../html/math-tree.js';
 import { displayMath, text } from './nodes.js';
@@ -21,7 +21,7 @@ export function cleanNotes(source: string, depth: number, name: string): RootCon
   if (deepest.test(source)) return [{ type: 'code', lang: null, value: source.slice(0, longestNote) }];
   const cut = source.length > longestNote;
   const root = parseNotes(cut ? source.slice(0, longestNote) : source);
-  const context: Context = { definitions: definitionsOf(root), prefix: `note-${name}-`, depth, lastDepth: depth };
+  const context: Context = { source, definitions: definitionsOf(root), prefix: `note-${name}-`, depth, lastDepth: depth };
   const blocks = root.children.flatMap((node) => clean(node, context)) as RootContent[];
   const word = `The note is cut here: it is longer than ${String(longestNote)} characters.`;
   return cut ? [...blocks, { type: 'paragraph', children: [{ type: 'emphasis', children: [text(word)] }] }] : blocks;
@@ -34,11 +34,12 @@ export function cleanInline(source: string): PhrasingContent[] {
   const root = parseNotes(line);
   const [only, ...others] = root.children;
   if (only?.type !== 'paragraph' || others.length > 0) return [text(line)];
-  const context: Context = { definitions: new Map(), prefix: 'note-', depth: 6, lastDepth: 6 };
+  const context: Context = { source: '', definitions: new Map(), prefix: 'note-', depth: 6, lastDepth: 6 };
   return only.children.flatMap((node) => clean(node, context)) as PhrasingContent[];
 }
 
 interface Context {
+  readonly source: string;
   readonly definitions: ReadonlyMap<string, Definition>;
   readonly prefix: string;
   readonly depth: number;
@@ -71,6 +72,13 @@ function clean(node: Nodes, context: Context): Nodes[] {
     case 'imageReference':
       return node.alt === null || node.alt === undefined || node.alt === '' ? [] : [text(node.alt)];
     case 'html':
+    case 'definition':
+    case 'yaml':
+    case 'root':
+    case 'frame':
+    case 'containerDirective':
+    case 'leafDirective':
+    case 'textDirective':
       return [];
     case 'link':
       return linked(node.url, inside(node.children, context));
@@ -88,6 +96,7 @@ function clean(node: Nodes, context: Context): Nodes[] {
     case 'footnoteDefinition':
       return [footnote(node, context)];
     case 'paragraph':
+      return [displayOf(node, context.source) ?? { type: 'paragraph', children: inside(node.children, context) as PhrasingContent[] }];
     case 'blockquote':
     case 'list':
     case 'listItem':
@@ -98,8 +107,6 @@ function clean(node: Nodes, context: Context): Nodes[] {
     case 'tableRow':
     case 'tableCell':
       return [{ ...strip(node), children: inside(node.children, context) } as Nodes];
-    default:
-      return [];
   }
 }
 
@@ -114,10 +121,19 @@ function footnote(node: Extract<Nodes, { type: 'footnoteReference' | 'footnoteDe
   return { type: 'footnoteDefinition', ...named, children: inside(node.children, context) as never };
 }
 
+/** `$$…$$` on a line of its own is a displayed formula to those who write it; the parser takes it for one in a line. */
+function displayOf(node: Paragraph, source: string): Nodes | null {
+  const [only, ...others] = node.children;
+  const offset = only?.position?.start.offset;
+  if (only?.type !== 'inlineMath' || others.length > 0 || offset === undefined) return null;
+  return source.startsWith('$$', offset) ? cleanDisplay(only.value) : null;
+}
+
 /** Without positions: they would be places in another file. */
 function strip<T extends Nodes>(node: T): T {
-  const { position: _, ...rest } = node;
-  return rest as T;
+  const bare = { ...node };
+  delete bare.position;
+  return bare;
 }
 
 function cleanDisplay(tex: string): Nodes {

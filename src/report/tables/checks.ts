@@ -1,5 +1,6 @@
 import type { CheckResult } from '../../results/schema.js';
 import { marked, say } from '../markdown/nodes.js';
+import { prose } from '../words/prose.js';
 import type { TableMaker } from './table.js';
 import { words } from './table.js';
 
@@ -11,6 +12,6 @@ export const checks: TableMaker = (results) => ({
   caption: say`What was checked, the worst first.`,
   columns: [words('Level'), words('Finding'), words('Where')],
   rows: order.flatMap((level) =>
-    results.checks.filter((check) => check.level === level).map((check) => [marked(check.level, 'level', check.level), check.message, check.where]),
+    results.checks.filter((check) => check.level === level).map((check) => [marked(check.level, 'level', check.level), prose(check.message), check.where]),
   ),
 });

@@ -1,8 +1,9 @@
 import { asGiven, roundTo, significant, withInterval } from '../../results/rounding.js';
-import type { ClaimResult } from '../../results/schema.js';
+import type { PhrasingContent } from 'mdast';
+import type { ClaimResult, Results } from '../../results/schema.js';
 import { say } from '../markdown/nodes.js';
 import { cleanInline } from '../markdown/clean.js';
-import { combinationLabel, parameterLabel } from '../words/labels.js';
+import { combinationLabel, parameterLabel, parameterOf, unitAfter } from '../words/labels.js';
 import { noNumber, sign } from '../words/values.js';
 import type { TableMaker } from './table.js';
 import { numbers, words } from './table.js';
@@ -11,19 +12,25 @@ import { numbers, words } from './table.js';
 export const claims: TableMaker = (results) => ({
   id: 'claims',
   caption: say`The claims, tested one-sided at 95 % on the corrected value with its whole uncertainty.`,
-  columns: [words('Claim'), words('Of'), words('Claimed'), numbers('Raw'), numbers('Corrected (68 % interval)'), numbers('95 % interval'), words('Verdict')],
+  columns: [words('Claim'), words('Verdict'), words('Tested'), numbers('Raw'), numbers('Corrected (68 % interval)'), numbers('95 % interval')],
   rows: results.claims.map((claim) => [
     cleanInline(claim.text),
-    say`${parameterLabel(results, claim.parameter)}, ${combinationLabel(results, claim.combination)}, ${claim.error}`,
-    `${claim.quantity} ${thresholdOf(claim)}`,
+    sign(claim.verdict),
+    tested(results, claim),
     rawOf(claim),
     estimateOf(claim),
     claim.interval95 === null || claim.estimate === null ? noNumber(claim.status) : interval95Of(claim),
-    sign(claim.verdict),
   ]),
 });
 
-export function thresholdOf({ test, threshold }: ClaimResult): string {
+/** "marginalised error on σ_8 from All three, gain at least 1.9" */
+function tested(results: Results, claim: ClaimResult): PhrasingContent[] {
+  const whose = say`${claim.error} error on ${parameterLabel(results, claim.parameter)} from ${combinationLabel(results, claim.combination)}`;
+  const unit = claim.quantity === 'size' ? unitAfter(parameterOf(results, claim.parameter).unit) : [];
+  return claim.quantity === 'gain' ? say`gain ${thresholdOf(claim)}: ${whose}` : say`${thresholdOf(claim)}${unit}: ${whose}`;
+}
+
+function thresholdOf({ test, threshold }: ClaimResult): string {
   if (typeof threshold === 'number') return `${test} ${asGiven(threshold)}`;
   return `between ${asGiven(threshold[0])} and ${asGiven(threshold[1])}`;
 }

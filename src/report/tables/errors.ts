@@ -2,7 +2,7 @@ import { asGiven } from '../../results/rounding.js';
 import type { Results } from '../../results/schema.js';
 import { say } from '../markdown/nodes.js';
 import { combinationLabel, nuisances, parameterLabel, parameterOf, targets, withUnit } from '../words/labels.js';
-import { corrected, raw, sign } from '../words/values.js';
+import { corrected, noNumber, raw, sign, view } from '../words/values.js';
 import type { ReportTable, TableMaker } from './table.js';
 import { numbers, words } from './table.js';
 
@@ -12,7 +12,7 @@ const columns = [
   numbers('Raw'),
   numbers('Corrected (68 % interval)'),
   words('Status'),
-  numbers('Fixed, corrected (68 % interval)'),
+  numbers('Fixed, corrected'),
   words('Status, fixed'),
 ];
 
@@ -33,7 +33,7 @@ function of(results: Results, parameters: readonly string[], head: Pick<ReportTa
       if (both === undefined) return [];
       const label = withUnit(parameterLabel(results, name), parameterOf(results, name).unit);
       const { marginalised, fixed } = both;
-      return [[label, combinationLabel(results, combination), raw(marginalised), corrected(marginalised), sign(marginalised.status), corrected(fixed), sign(fixed.status)]];
+      return [[label, combinationLabel(results, combination), raw(marginalised), corrected(marginalised), sign(marginalised.status), fixed.corrected === null ? noNumber(fixed.status) : view(fixed.corrected, fixed), sign(fixed.status)]];
     }),
   );
   return { ...head, columns, rows };

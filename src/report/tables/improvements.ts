@@ -1,8 +1,7 @@
-import { roundTo, significant } from '../../results/rounding.js';
 import type { Improvement, Results } from '../../results/schema.js';
 import { say } from '../markdown/nodes.js';
 import { combinationLabel, nuisances, parameterLabel, targets } from '../words/labels.js';
-import { corrected, raw, sign } from '../words/values.js';
+import { corrected, raw, sign, view } from '../words/values.js';
 import type { ReportTable, TableMaker } from './table.js';
 import { numbers, words } from './table.js';
 
@@ -46,9 +45,7 @@ function of(results: Results, parameters: readonly string[], kind: Kind, head: P
   return { ...head, columns, rows };
 }
 
-/** Rounded as its own spread allows. */
+/** With the digits of the gain that it stands beside. */
 export function sham(gain: Improvement): string {
-  if (gain.sham === null) return 'none';
-  if (gain.shamInterval === null) return significant(gain.sham);
-  return roundTo(gain.sham, (gain.shamInterval[1] - gain.shamInterval[0]) / 2);
+  return gain.sham === null ? 'none' : view(gain.sham, gain);
 }

@@ -1,8 +1,9 @@
-import { asGiven, count, significant } from '../../results/rounding.js';
+import { asGiven, compact, count, significant } from '../../results/rounding.js';
 import type { DerivativeResult, Results } from '../../results/schema.js';
 import type { Said } from '../markdown/nodes.js';
 import { cite, inlineMath, say } from '../markdown/nodes.js';
 import { combinationLabel, parameterLabel } from '../words/labels.js';
+import { slug } from '../slug.js';
 import type { ReportTable, TableMaker } from './table.js';
 import { numbers, words } from './table.js';
 
@@ -17,13 +18,13 @@ export const factors: TableMaker = (results, combination) => {
       { type: 'inlineCode', value: suite },
       value === null ? 'does not exist' : significant(value, 4),
       value === null ? 'does not exist' : significant(Math.sqrt(value), 4),
-      [cite(source)],
+      say`${source}${cite(slug(source))}`,
     ];
     return [
-      row('Unbiased variance of a parameter', 'taylor-joachimi', of.taylorJoachimi),
-      row('Scatter of estimates in an analysis with this covariance', 'dodelson-schneider', of.dodelsonSchneider),
-      row('The same, over the variance that such an analysis would quote', 'percival-2014', of.percival2014),
-      row('Variance with the frequentist-matching prior', 'percival-2022', of.percival2022),
+      row('Unbiased variance of a parameter', 'Taylor and Joachimi 2014', of.taylorJoachimi),
+      row('Scatter of estimates in an analysis with this covariance', 'Dodelson and Schneider 2013', of.dodelsonSchneider),
+      row('The same, over the variance that such an analysis would quote', 'Percival and others 2014', of.percival2014),
+      row('Variance with the frequentist-matching prior', 'Percival and others 2022', of.percival2022),
     ];
   });
   return {
@@ -82,5 +83,5 @@ const kinds: Readonly<Record<Exclude<DerivativeResult['kind'], 'nodes'>, string>
 
 function nodesOf(derivative: DerivativeResult): string {
   if (derivative.kind !== 'nodes') return kinds[derivative.kind];
-  return derivative.nodes.map(({ at, weight }) => `${asGiven(at)}: ${significant(weight, 4)}`).join('; ');
+  return derivative.nodes.map(({ at, weight }) => `${asGiven(at)}: ${compact(weight)}`).join('; ');
 }

@@ -1,8 +1,9 @@
 import { percent } from '../../results/rounding.js';
 import type { Estimate, Results } from '../../results/schema.js';
-import { say, text } from '../markdown/nodes.js';
+import { say } from '../markdown/nodes.js';
+import { prose } from '../words/prose.js';
 import { combinationLabel, parameterLabel, targets } from '../words/labels.js';
-import { corrected, sign, view } from '../words/values.js';
+import { noNumber, sign, view } from '../words/values.js';
 import type { Said } from '../markdown/nodes.js';
 import type { TableMaker } from './table.js';
 import { numbers, words } from './table.js';
@@ -10,7 +11,7 @@ import { numbers, words } from './table.js';
 const columns = [
   words('Parameter'),
   words('Combination'),
-  numbers('Corrected (68 % interval)'),
+  numbers('Corrected'),
   numbers('Limit'),
   numbers('Split'),
   numbers('Noise: derivatives'),
@@ -45,13 +46,13 @@ function rowOf(results: Results, name: string, combination: string, estimate: Es
     [
       parameterLabel(results, name),
       combinationLabel(results, combination),
-      corrected(estimate),
+      estimate.corrected === null ? noNumber(estimate.status) : view(estimate.corrected, estimate),
       view(estimate.limit, estimate),
       view(estimate.split, estimate),
       share(estimate.parts.derivatives),
       share(estimate.parts.covariance),
       sign(estimate.status),
-      text(estimate.why),
+      prose(estimate.why),
     ],
   ];
 }
@@ -65,7 +66,7 @@ export const statuses: TableMaker = ({ rules, study }) => ({
   id: 'statuses',
   caption: say`The rules of the status. The tolerance of this study is ${percent(study.tolerance)}.`,
   columns: [words('Status'), words('Rule')],
-  rows: rules.statuses.map(({ status, rule }) => [sign(status), rule]),
+  rows: rules.statuses.map(({ status, rule }) => [sign(status), prose(rule)]),
 });
 
 export const verdicts: TableMaker = ({ rules, claims }) =>
@@ -75,5 +76,5 @@ export const verdicts: TableMaker = ({ rules, claims }) =>
         id: 'verdicts',
         caption: say`The rules of the verdict on a claim.`,
         columns: [words('Verdict'), words('Rule')],
-        rows: rules.verdicts.map(({ verdict, rule }) => [sign(verdict), rule]),
+        rows: rules.verdicts.map(({ verdict, rule }) => [sign(verdict), prose(rule)]),
       };

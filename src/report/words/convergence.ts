@@ -2,6 +2,7 @@ import type { PhrasingContent } from 'mdast';
 import type { Estimate, Results } from '../../results/schema.js';
 import { list, listed, paragraph, say } from '../markdown/nodes.js';
 import { combinationLabel, parameterLabel } from './labels.js';
+import { prose } from './prose.js';
 import type { SentenceMaker } from './sentence-maker.js';
 import type { Named } from './tally.js';
 import { quotable, tallyStatuses, targetErrors, targetGains } from './tally.js';
@@ -24,7 +25,7 @@ export const convergenceLead: SentenceMaker = (results) => {
 };
 
 function item(results: Results, what: string, { parameter, combination, estimate }: Named<Estimate>): PhrasingContent[] {
-  return say`the ${what} ${parameterLabel(results, parameter)} from ${combinationLabel(results, combination)}. ${estimate.why}`;
+  return say`the ${what} ${parameterLabel(results, parameter)} from ${combinationLabel(results, combination)}. ${prose(estimate.why)}`;
 }
 
 /** Which simulations would help. */

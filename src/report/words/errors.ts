@@ -5,12 +5,12 @@ import { list, listed, paragraph, say } from '../markdown/nodes.js';
 import { combinationLabel, nuisances, parameterLabel, parameterOf, targets, unitAfter } from './labels.js';
 import type { SentenceMaker } from './sentence-maker.js';
 import { quotable, tallyStatuses, targetErrors } from './tally.js';
-import { corrected } from './values.js';
+import { correctedInWords } from './values.js';
 
 export const errorLead: SentenceMaker = (results) => {
   const all = targetErrors(results);
   const hidden = nuisances(results).map((name) => parameterLabel(results, name));
-  const over = hidden.length === 0 ? [] : say`, marginalised over ${listed(hidden)} too`;
+  const over = hidden.length === 0 ? [] : say`, all marginalised over ${listed(hidden)} as well`;
   return [
     paragraph(
       ...say`Of ${String(all.length)} errors on target parameters${over}, ${listed(tallyStatuses(all.map(({ estimate }) => estimate.status)))}. The smallest that can be quoted:`,
@@ -30,5 +30,5 @@ function smallest(results: Results, name: string): PhrasingContent[] {
   ];
   const compare = beside.length === 0 ? [] : say` (${beside.flatMap((one, i) => (i === 0 ? one : say`; ${one}`))})`;
   if (best === undefined) return say`${label}: cannot tell; no combination gives a settled error.${compare}`;
-  return say`${label}: ${corrected(best.estimate)}${unitAfter(unit)} from ${combinationLabel(results, best.combination)}${compare}.`;
+  return say`${label}: ${correctedInWords(best.estimate)}${unitAfter(unit)} from ${combinationLabel(results, best.combination)}${compare}.`;
 }

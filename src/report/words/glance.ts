@@ -1,5 +1,5 @@
 import type { PhrasingContent } from 'mdast';
-import { asGiven, percent } from '../../results/rounding.js';
+import { asGiven, percent, thinSpace } from '../../results/rounding.js';
 import type { ClaimResult, Improvement, Results } from '../../results/schema.js';
 import { cleanInline } from '../markdown/clean.js';
 import { list, listed, marked, paragraph, say, strong } from '../markdown/nodes.js';
@@ -9,7 +9,8 @@ import { combinationLabel, parameterLabel, parameterOf, unitAfter } from './labe
 import type { SentenceMaker } from './sentence-maker.js';
 import type { Named } from './tally.js';
 import { tallyStatuses, tallyVerdicts, targetGains } from './tally.js';
-import { capital, corrected, counted, raw } from './values.js';
+import { prose } from './prose.js';
+import { atOneSigma, capital, correctedInWords, counted, raw } from './values.js';
 
 /** The conclusion of the whole report, in one or two sentences. */
 export const glance: SentenceMaker = (results) => {
@@ -41,19 +42,19 @@ function evidence(results: Results, claim: ClaimResult): PhrasingContent[] {
   const unit = claim.quantity === 'size' ? unitAfter(parameterOf(results, claim.parameter).unit) : [];
   const what = claim.quantity === 'gain' ? 'gain' : 'error';
   const before = say`Raw ${what} ${rawOf(claim)}${unit}, `;
-  if (claim.estimate === null) return say`${before}corrected: cannot tell. ${claim.why}`;
-  const numbers = say`${before}corrected ${estimateOf(claim)}${unit}`;
+  if (claim.estimate === null) return say`${before}corrected: cannot tell. ${prose(claim.why)}`;
+  const numbers = say`${before}corrected ${atOneSigma(estimateOf(claim))}${unit}`;
   switch (claim.verdict) {
     case 'supported':
-      return say`${numbers}: ${side(claim, true)}, at 95 % confidence.`;
+      return say`${numbers}: ${side(claim, true)}, at 95${thinSpace}% confidence.`;
     case 'contradicted':
-      return say`${numbers}: ${side(claim, false)}, at 95 % confidence.`;
+      return say`${numbers}: ${side(claim, false)}, at 95${thinSpace}% confidence.`;
     case 'too close to call':
       return say`${numbers}: well known, but too near ${bound(claim)} to say which side it is on.`;
     case 'not settled':
-      return say`${numbers}: cannot tell yet. ${claim.why} More simulations can decide.`;
+      return say`${numbers}: cannot tell yet. ${prose(claim.why)} More simulations can decide.`;
     case 'not assessable':
-      return say`${numbers}: cannot tell. ${claim.why}`;
+      return say`${numbers}: cannot tell. ${prose(claim.why)}`;
   }
 }
 
@@ -83,10 +84,10 @@ export const flattery: SentenceMaker = (results) => {
   if (excess(most) <= 1 + tolerance) {
     return [paragraph(...say`No raw gain on a target parameter exceeds its corrected value by more than the tolerance of ${percent(tolerance)}.`)];
   }
-  const alone = estimate.sham === null ? [] : say`, of which the noise of the added derivatives alone would have shown ${sham(estimate)}`;
+  const alone = estimate.sham === null ? [] : say`, where the noise of the added derivatives alone would have shown ${sham(estimate)}`;
   const where = say`the gain on ${parameterLabel(results, parameter)} from ${combinationLabel(results, combination)}`;
   return [
-    paragraph(...say`Noise in the derivatives looks like information. It flatters most ${where}: raw ${raw(estimate)}${alone}; corrected ${corrected(estimate)}.`),
+    paragraph(...say`Noise in the derivatives looks like information. It flatters most ${where}: raw ${raw(estimate)}${alone}; corrected ${correctedInWords(estimate)}.`),
   ];
 };
 

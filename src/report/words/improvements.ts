@@ -1,11 +1,13 @@
 import type { PhrasingContent } from 'mdast';
+import { thinSpace } from '../../results/rounding.js';
 import type { Improvement, Results } from '../../results/schema.js';
 import { list, listed, paragraph, say } from '../markdown/nodes.js';
 import { sham } from '../tables/improvements.js';
 import { parameterLabel, targets } from './labels.js';
 import type { SentenceMaker } from './sentence-maker.js';
 import { tallyStatuses, targetGains } from './tally.js';
-import { corrected, noNumber, raw } from './values.js';
+import { prose } from './prose.js';
+import { correctedInWords, noNumber, raw } from './values.js';
 
 export const improvementLead: SentenceMaker = (results) => {
   const all = targetGains(results);
@@ -14,7 +16,7 @@ export const improvementLead: SentenceMaker = (results) => {
   const statuses = all.map(({ estimate }) => estimate.status);
   return [
     paragraph(
-      ...say`Of ${String(all.length)} gains on target parameters, ${shown === 0 ? 'none is' : shown === 1 ? '1 is' : `${String(shown)} are`} above 1 at 95 % confidence once the noise in the derivatives is taken out. Of their sizes, ${listed(tallyStatuses(statuses))}.`,
+      ...say`Of ${String(all.length)} gains on target parameters, ${shown === 0 ? 'none is' : shown === 1 ? '1 is' : `${String(shown)} are`} above 1 at 95${thinSpace}% confidence once the noise in the derivatives is taken out. Of their sizes, ${listed(tallyStatuses(statuses))}.`,
     ),
   ];
 };
@@ -39,7 +41,7 @@ function gainItem(results: Results, name: string, gain: Improvement): PhrasingCo
 }
 
 function correctedOrWhy(gain: Improvement): string {
-  return gain.corrected === null ? noNumber(gain.status) : `${corrected(gain).replace(/\)$/, ' at 68 %)')}`;
+  return gain.corrected === null ? noNumber(gain.status) : correctedInWords(gain);
 }
 
 /** What the number says for the decision at hand: is there a gain? */
@@ -47,7 +49,7 @@ function meaning({ corrected: value, interval95 }: Improvement): string {
   if (value === null || interval95 === null) return 'Nothing can be said about a gain.';
   if (interval95[0] > 1) return 'There is a gain.';
   if (interval95[1] < 1) return 'There is no gain: the error grows.';
-  return 'A gain is not shown: 1 is within the 95 % interval.';
+  return 'A gain is not shown: 1 is within the 95\u202f% interval.';
 }
 
 function settled({ status, why }: Improvement): string {
@@ -55,11 +57,11 @@ function settled({ status, why }: Improvement): string {
     case 'settled':
       return 'Its size is settled.';
     case 'correctable':
-      return `Its size is settled once corrected. ${why}`;
+      return `Its size is settled once corrected. ${prose(why)}`;
     case 'unsettled':
-      return `Its size is not settled. ${why}`;
+      return `Its size is not settled. ${prose(why)}`;
     case 'undetermined':
     case 'not assessable':
-      return why;
+      return prose(why);
   }
 }

@@ -1,10 +1,11 @@
 import type { PhrasingContent, RootContent } from 'mdast';
-import { asGiven, count, percent, significant } from '../../results/rounding.js';
+import { asGiven, compact, count, percent, significant } from '../../results/rounding.js';
 import type { CombinationResult, Results } from '../../results/schema.js';
 import { cite, displayMath, inlineMath, list, listed, paragraph, say, text } from '../markdown/nodes.js';
 import { leastDerivatives } from '../tables/combinations.js';
 import { parameterLabel, probeLabel } from './labels.js';
 import type { SentenceMaker } from './sentence-maker.js';
+import { prose } from './prose.js';
 import { counted } from './values.js';
 
 /** What goes into the data vector of a combination, and what is left out. */
@@ -65,7 +66,7 @@ function volumeWords(scale: number): RootContent[] {
   if (scale === 1) return [];
   return [
     paragraph(
-      ...say`The Fisher matrix, priors aside, is multiplied by ${significant(scale, 4)}, the volume asked for over the volume simulated: errors without priors shrink by ${significant(Math.sqrt(scale), 4)}. This takes edges, modes larger than a simulation, and correlations between patches to be of no account.`,
+      ...say`The Fisher matrix, priors aside, is multiplied by ${compact(scale)}, the volume asked for over the volume simulated: errors without priors change by a factor of ${compact(1 / Math.sqrt(scale))}. This takes edges, modes larger than a simulation, and correlations between patches to be of no account.`,
     ),
   ];
 }
@@ -75,10 +76,10 @@ export const methodsFisher: SentenceMaker = (results, name) => {
   const found = combinationOf(results, name);
   const noisy = Object.values(found.derivativeRealisations).some((n) => n !== null);
   if (!noisy) {
-    return [paragraph(text('No derivative comes with realisations of known number: none is exact and noisy at once, so nothing can be, or need be, taken out.'))];
+    return [paragraph(text('No derivative comes with realisations of known number: there is no noise that could be measured and taken out.'))];
   }
   const convergence = name === null ? undefined : results.convergence[name];
-  const blocks = convergence?.realisations.map((n, i) => `${counted(convergence.blocks[i]!, 'block')} of ${count(n)}`) ?? [];
+  const blocks = convergence?.realisations.map((n, i) => `${counted(convergence.blocks[i]!, 'block')} of ${Number.isInteger(n) ? count(n) : `about ${count(Math.round(n))}`}`) ?? [];
   const shown =
     convergence === undefined
       ? []
@@ -112,7 +113,7 @@ function latexNumber(value: number): string {
 export const methodsMissing: SentenceMaker = (results, name) => {
   const { notAssessable } = combinationOf(results, name);
   if (notAssessable.length === 0) return [paragraph(text('Everything that this report looks at could be assessed.'))];
-  return [paragraph(text('Not assessable:')), list(notAssessable.map((sentence) => [text(sentence)]))];
+  return [paragraph(text('Not assessable:')), list(notAssessable.map((sentence) => [text(prose(sentence))]))];
 };
 
 export const methodsLead: SentenceMaker = (results) => [

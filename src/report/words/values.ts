@@ -1,7 +1,7 @@
 import type { PhrasingContent } from 'mdast';
-import { significant, roundTo, withInterval } from '../../results/rounding.js';
+import { roundTo, significant, thinSpace, withInterval } from '../../results/rounding.js';
 import type { Estimate, Status, Verdict } from '../../results/schema.js';
-import { marked, say, text } from '../markdown/nodes.js';
+import { marked } from '../markdown/nodes.js';
 
 /** What stands where there is no number. */
 export function noNumber(status: Status): string {
@@ -12,6 +12,15 @@ export function noNumber(status: Status): string {
 export function corrected(estimate: Estimate): string {
   if (estimate.corrected === null) return noNumber(estimate.status);
   return withInterval(estimate.corrected, estimate.standardError, estimate.interval);
+}
+
+/** The same in a sentence: "1.30 (1.13 to 1.50 at 68 %)". */
+export function correctedInWords(estimate: Estimate): string {
+  return atOneSigma(corrected(estimate));
+}
+
+export function atOneSigma(words: string): string {
+  return words.replace(/\)$/, ` at 68${thinSpace}%)`);
 }
 
 /** The raw value has the digits of the corrected one: it has no uncertainty of its own. */
@@ -32,17 +41,11 @@ export function sign(word: Status | Verdict): PhrasingContent {
 }
 
 /** "1 claim", "3 claims", "no claims". */
-export function counted(n: number, one: string, many: string = `${one}s`): string {
+export function counted(n: number, one: string, many = `${one}s`): string {
   if (n === 0) return `no ${many}`;
   return n === 1 ? `1 ${one}` : `${String(n)} ${many}`;
 }
 
 export function capital(words: string): string {
   return words.slice(0, 1).toUpperCase() + words.slice(1);
-}
-
-/** A parameter's error: the letter every reader of a forecast knows. */
-export function sigmaOf(label: PhrasingContent): PhrasingContent[] {
-  if (label.type === 'inlineMath') return say`error on ${label}`;
-  return [text('error on '), label];
 }
