@@ -1,5 +1,6 @@
 import type { Results } from '../results/schema.js';
 import { roundTo } from '../results/rounding.js';
+import { horizontalAxis, verticalAxis } from './axes.js';
 import { shownCombinations } from './combinations.js';
 import type { Drawing } from './drawing.js';
 import { compose, finish } from './drawing.js';
@@ -7,7 +8,7 @@ import type { Figure } from './figure.js';
 import { parameterLabel, parameterName, parameterNames, shortened } from './labels.js';
 import { logTicks } from './log-ticks.js';
 import { lookOf, quiet } from './palette.js';
-import { gridFor, gridHeight, pageWidth, placed, tick } from './panels.js';
+import { gridFor, gridHeight, pageWidth, placed } from './panels.js';
 
 /** Most panels: beyond these the table serves better. */
 const mostPanels = 24;
@@ -60,7 +61,8 @@ function blockPoints(counts: readonly number[], values: readonly (number | null)
   });
 }
 
-function panel(results: Results, { document, plot }: Drawing, { parameter, combination, label, look }: Case, width: number, height: number): Element {
+function panel(results: Results, drawing: Drawing, { parameter, combination, label, look }: Case, width: number, height: number): Element {
+  const { document, plot } = drawing;
   const found = results.convergence[combination]!;
   const values = found.errors[parameter]!.marginalised;
   const { split } = results.combinations[combination]!.errors[parameter]!.marginalised;
@@ -80,9 +82,11 @@ function panel(results: Results, { document, plot }: Drawing, { parameter, combi
     marginRight: 22,
     marginTop: 34,
     marginBottom: 38,
-    x: { type: 'log', domain: [least / 1.25, most * 1.6], label: 'derivative realisations', labelAnchor: 'center', labelArrow: 'none', ticks: found.realisations.map((n) => n), tickFormat: (n: number) => String(Math.round(n)) },
-    y: { type: 'log', domain, label: null, ticks: [...logTicks(domain, 5)], tickFormat: tick },
+    x: { type: 'log', domain: [least / 1.25, most * 1.6], label: 'derivative realisations', labelAnchor: 'center', labelArrow: 'none', ticks: [] },
+    y: { type: 'log', domain, label: null, ticks: [] },
     marks: [
+      horizontalAxis(drawing, found.realisations, (n) => String(Math.round(n))),
+      verticalAxis(drawing, logTicks(domain, 5)),
       plot.text([`${parameterLabel(results, parameter)}: ${shortened(label, Math.floor((width - 60) / 7.5) - 4)}`], { frameAnchor: 'top', dy: -18, fill: colour, fontWeight: 'bold' }),
       plot.line(curve, { x: 'n', y: 'value', stroke: quiet.light, strokeDasharray: '4 3' }),
       plot.ruleX(raw, { x: 'n', y1: (p: BlockPoint) => Math.max(p.value - p.scatter, domain[0]), y2: (p: BlockPoint) => p.value + p.scatter, stroke: quiet.light }),

@@ -10,7 +10,11 @@ import { pageWidth } from './panels.js';
 /** Correlation matrix of the data of each suite, with the blocks marked. */
 export function dataCorrelation(results: Results, drawing: Drawing): readonly Figure[] {
   return Object.entries(results.dataCorrelation).map(([suite, matrix]) => {
-    const svg = compose(drawing, { width: pageWidth, height: 700, panels: [{ svg: panel(results, drawing, matrix), x: 0, y: 0 }] });
+    const panels = [
+      { svg: heat(drawing, matrix), x: left, y: top },
+      { svg: frame(results, drawing, matrix), x: 0, y: 0 },
+    ];
+    const svg = compose(drawing, { width: pageWidth, height: top + side + 70, panels });
     const coarse = matrix.entriesPerCell > 1 ? ` Each cell is the mean over ${String(matrix.entriesPerCell)} × ${String(matrix.entriesPerCell)} entries at most.` : '';
     return finish(svg, {
       name: `data-correlation-${suite}`,
@@ -21,47 +25,78 @@ export function dataCorrelation(results: Results, drawing: Drawing): readonly Fi
   });
 }
 
-interface Cell {
-  readonly x1: number;
-  readonly x2: number;
-  readonly y1: number;
-  readonly y2: number;
-  readonly value: number;
+const left = 190;
+const top = 12;
+const side = 618;
+/** Steps of strength: as many as the eye tells apart, and one path each keeps the file small. */
+const levels = 20;
+
+/** Cells of one sign and strength as one path: a thousand rectangles would be half a megabyte. */
+export function cellPaths(cells: readonly (readonly number[])[]): ReadonlyMap<number, string> {
+  const size = side / cells.length;
+  const paths = new Map<number, string>();
+  const edge = (k: number): number => Math.round(k * size);
+  cells.forEach((values, row) => {
+    values.forEach((value, column) => {
+      const level = Math.round(levels * value);
+      if (level === 0) return;
+      const [x, y] = [edge(column), edge(row)];
+      const piece = `M${String(x)},${String(y)}h${String(edge(column + 1) - x)}v${String(edge(row + 1) - y)}H${String(x)}z`;
+      paths.set(level, (paths.get(level) ?? '') + piece);
+    });
+  });
+  return new Map([...paths].sort(([a], [b]) => a - b));
 }
 
-function panel(results: Results, { document, plot }: Drawing, matrix: DataCorrelation): Element {
-  const cells: Cell[] = matrix.cells.flatMap((values, row) =>
-    values.map((value, column) => ({ x1: column, x2: column + 1, y1: row, y2: row + 1, value })),
-  );
-  const size = matrix.cells.length;
+function heat({ document }: Drawing, { cells }: DataCorrelation): Element {
+  const namespace = 'http://www.w3.org/2000/svg';
+  const svg = document.createElementNS(namespace, 'svg');
+  for (const [level, d] of cellPaths(cells)) {
+    const path = document.createElementNS(namespace, 'path');
+    path.setAttribute('d', d);
+    path.setAttribute('fill', tone(level));
+    path.setAttribute('fill-opacity', String(Math.abs(level) / levels));
+    svg.append(path);
+  }
+  return svg;
+}
+
+/** Blocks in their order, with where they start and end among the cells. */
+function spansOf(results: Results, { groups }: DataCorrelation) {
   let place = 0;
-  const spans = matrix.groups.map((group) => {
+  return groups.map((group, k) => {
     const start = place;
     place += group.cells;
-    const probe = results.probes[group.probe]?.label ?? group.probe;
-    return { start, end: place, label: shortened(`${probe}: ${blockLabel(group.label)}`, 24) };
+    const probe = groups[k - 1]?.probe === group.probe ? '' : (results.probes[group.probe]?.label ?? group.probe);
+    return { start, end: place, probe, label: shortened(blockLabel(group.label), 24) };
   });
+}
+
+function frame(results: Results, { document, plot }: Drawing, matrix: DataCorrelation): Element {
+  const size = matrix.cells.length;
+  const spans = spansOf(results, matrix);
+  type Span = (typeof spans)[number];
+  const middle = (span: Span): number => (span.start + span.end) / 2;
   return plot.plot({
     document,
     width: pageWidth,
-    height: 700,
-    marginLeft: 190,
-    marginTop: 12,
-    marginRight: 10,
+    height: top + side + 70,
+    marginLeft: left,
+    marginTop: top,
+    marginRight: pageWidth - left - side,
     marginBottom: 70,
     x: { domain: [0, size], axis: null },
     y: { domain: [0, size], reverse: true, axis: null },
-    opacity: { type: 'identity' },
     marks: [
-      plot.rect(
-        cells.filter(({ value }) => Math.abs(value) >= 0.02),
-        { x1: 'x1', x2: 'x2', y1: 'y1', y2: 'y2', inset: 0, fill: (cell: Cell) => tone(cell.value), fillOpacity: (cell: Cell) => Math.round(20 * Math.abs(cell.value)) / 20 },
-      ),
       plot.ruleX(spans.slice(1), { x: 'start', stroke: quiet.light, strokeOpacity: 0.6 }),
       plot.ruleY(spans.slice(1), { y: 'start', stroke: quiet.light, strokeOpacity: 0.6 }),
       plot.frame({ stroke: quiet.light }),
-      plot.text(spans, { frameAnchor: 'left', x: 0, y: (span) => (span.start + span.end) / 2, text: 'label', textAnchor: 'end', dx: -8 }),
-      plot.text(spans, { frameAnchor: 'bottom', y: size, x: (span) => (span.start + span.end) / 2, text: 'label', rotate: -24, textAnchor: 'end', dy: 8 }),
+      plot.text(spans, { x: 0, y: middle, text: 'label', textAnchor: 'end', dx: -8 }),
+      plot.text(
+        spans.filter(({ probe }) => probe !== ''),
+        { x: 0, y: 'start', text: (span: Span) => shortened(span.probe, 24), textAnchor: 'end', dx: -8, dy: 9, fontWeight: 'bold' },
+      ),
+      plot.text(spans, { y: size, x: middle, text: 'label', rotate: -24, textAnchor: 'end', dy: 10 }),
     ],
   });
 }

@@ -27,7 +27,7 @@ export function ellipses(results: Results, drawing: Drawing): readonly Figure[] 
   const top = keyHeight(notes);
   const left = 46;
   const cell = Math.floor((pageWidth - left) / targets.length);
-  const height = top + cell * targets.length + 34;
+  const height = top + cell * targets.length + 46;
   const panels = targets.flatMap((vertical, row) =>
     targets.slice(0, row + 1).map((horizontal, column) => ({
       svg:
@@ -64,8 +64,8 @@ function rangeOf(results: Results, drawn: readonly Drawn[], name: string): { rea
   return { centre, domain: [centre - 2.9 * largest, centre + 2.9 * largest] };
 }
 
-function frame(cell: number, edges: { readonly left: boolean; readonly bottom: boolean }) {
-  return { width: cell + 46, height: cell + 34, marginLeft: 52, marginRight: 4, marginTop: 6, marginBottom: edges.bottom ? 40 : 36 };
+function frame(cell: number) {
+  return { width: cell + 46, height: cell + 44, marginLeft: 52, marginRight: 4, marginTop: 6, marginBottom: 46 };
 }
 
 function pair(
@@ -80,7 +80,7 @@ function pair(
   const [x, y] = [rangeOf(results, drawn, horizontal), rangeOf(results, drawn, vertical)];
   return plot.plot({
     document,
-    ...frame(cell, edges),
+    ...frame(cell),
     x: { domain: x.domain, label: edges.bottom ? parameterLabel(results, horizontal) : null, labelAnchor: 'center', labelArrow: 'none', ticks: 3, tickFormat: edges.bottom ? tick : () => '' },
     y: { domain: y.domain, label: edges.left ? parameterLabel(results, vertical) : null, labelAnchor: 'center', labelArrow: 'none', ticks: 3, tickFormat: edges.left ? tick : () => '' },
     marks: [
@@ -124,7 +124,7 @@ function curve(results: Results, { document, plot }: Drawing, drawn: readonly Dr
   const { centre, domain } = rangeOf(results, drawn, name);
   return plot.plot({
     document,
-    ...frame(cell, { left: false, bottom }),
+    ...frame(cell),
     x: { domain, label: bottom ? parameterLabel(results, name) : null, labelAnchor: 'center', labelArrow: 'none', ticks: 3, tickFormat: bottom ? tick : () => '' },
     y: { domain: [0, 1.08], axis: null },
     marks: [

@@ -1,5 +1,6 @@
 import type { Estimate, Results } from '../results/schema.js';
 import { roundTo } from '../results/rounding.js';
+import { horizontalAxis } from './axes.js';
 import type { Shown } from './combinations.js';
 import { shownCombinations } from './combinations.js';
 import type { Drawing } from './drawing.js';
@@ -8,12 +9,12 @@ import type { Figure } from './figure.js';
 import { parameterLabel, parameterName, shortened } from './labels.js';
 import { logTicks } from './log-ticks.js';
 import { lookOf, quiet } from './palette.js';
-import { gridFor, gridHeight, placed, tick } from './panels.js';
+import { gridFor, gridHeight, placed } from './panels.js';
 
 /** Marginalised (filled) and fixed (hollow) errors of every parameter, with references and priors. */
 export function errors(results: Results, drawing: Drawing): readonly Figure[] {
   const shown = shownCombinations(results);
-  const grid = gridFor(results.parameters.length, 74 + 22 * shown.length, 34, 2);
+  const grid = gridFor(results.parameters.length, 78 + 22 * shown.length, 34, 2);
   const svgs = results.parameters.map((parameter) => panel(drawing, results, parameter, shown, grid.width, grid.height));
   const notes = [{ x: 12, y: 20, text: 'Corrected errors: filled marginalised with 95 % interval, hollow fixed. Dashed: references and priors.', colour: quiet.light }];
   const svg = compose(drawing, { width: 820, height: gridHeight(grid, svgs.length), panels: placed(grid, svgs), notes });
@@ -49,13 +50,14 @@ function referenceLines({ prior, reference }: Results['parameters'][number]) {
 }
 
 function panel(
-  { document, plot }: Drawing,
+  drawing: Drawing,
   results: Results,
   parameter: Results['parameters'][number],
   shown: readonly Shown[],
   width: number,
   height: number,
 ): Element {
+  const { document, plot } = drawing;
   const rows = shown.map((one, place) => ({ ...one, place, marginalised: one.result.errors[parameter.name]!.marginalised, fixed: one.result.errors[parameter.name]!.fixed }));
   type Row = (typeof rows)[number];
   const has = (pick: (row: Row) => Estimate): readonly Row[] => rows.filter((row) => pick(row).corrected !== null);
@@ -71,10 +73,11 @@ function panel(
     marginLeft: 176,
     marginRight: 18,
     marginTop: 26,
-    marginBottom: 40,
-    x: { type: 'log', domain, label: `error of ${parameterLabel(results, parameter.name)}${unit}`, labelAnchor: 'center', labelArrow: 'none', ticks: [...logTicks(domain, 5)], tickFormat: tick },
+    marginBottom: 44,
+    x: { type: 'log', domain, label: `error of ${parameterLabel(results, parameter.name)}${unit}`, labelAnchor: 'center', labelArrow: 'none', ticks: [] },
     y: { type: 'linear', domain: [-0.5, rows.length - 0.5], reverse: true, axis: null },
     marks: [
+      horizontalAxis(drawing, logTicks(domain, 5)),
       plot.ruleX(lines, { x: 'at', stroke: quiet.light, strokeDasharray: '4 3' }),
       plot.text(lines, { x: 'at', text: 'label', frameAnchor: 'top', textAnchor: 'end', dx: 4, dy: -10, fill: quiet.light, fontSize: 11 }),
       plot.ruleY(has(({ marginalised }) => marginalised), { y: 'place', x1: (row: Row) => row.marginalised.interval95![0], x2: (row: Row) => row.marginalised.interval95![1], stroke: colour, strokeWidth: 1.6 }),

@@ -1,12 +1,12 @@
 import type { Improvement, Results } from '../results/schema.js';
 import { roundTo } from '../results/rounding.js';
+import { horizontalAxis } from './axes.js';
 import type { Drawing } from './drawing.js';
 import { compose, finish } from './drawing.js';
 import type { Figure } from './figure.js';
 import { parameterLabel, parameterName, parameterNames, shortened } from './labels.js';
 import { logTicks } from './log-ticks.js';
 import { lookOf, quiet, warning } from './palette.js';
-import { tick } from './panels.js';
 
 type Kind = 'marginalised' | 'fixed';
 
@@ -51,8 +51,7 @@ function gainFigure(results: Results, drawing: Drawing, kind: Kind): Figure {
   const rows = gainRows(results, kind);
   const height = top + rows[rows.length - 1]!.place + 56;
   const panel = drawRows(drawing, rows, height);
-  const known = new Set<string>();
-  const heads = rows.filter(({ parameter }) => !known.has(parameter) && known.add(parameter));
+  const heads = rows.filter(({ parameter }, k) => rows[k - 1]?.parameter !== parameter);
   const notes = [
     ...key(),
     ...heads.map((row) => ({
@@ -89,7 +88,8 @@ function key() {
   ];
 }
 
-function drawRows({ document, plot }: Drawing, rows: readonly GainRow[], height: number): Element {
+function drawRows(drawing: Drawing, rows: readonly GainRow[], height: number): Element {
+  const { document, plot } = drawing;
   const y = (row: GainRow): number => row.place;
   const known = rows.filter(({ gain }) => gain.corrected !== null);
   const unknown = rows.filter(({ gain }) => gain.corrected === null);
@@ -105,13 +105,14 @@ function drawRows({ document, plot }: Drawing, rows: readonly GainRow[], height:
     marginTop: top,
     marginBottom: 44,
     style: { fontSize: '12px' },
-    x: { type: 'log', domain, label: 'error of the baseline / error of the combination (above 1 is better)', labelAnchor: 'center', labelArrow: 'none', tickFormat: tick, ticks: [...logTicks(domain, 9)] },
+    x: { type: 'log', domain, label: 'error of the baseline / error of the combination (above 1 is better)', labelAnchor: 'center', labelArrow: 'none', ticks: [] },
     y: { type: 'linear', domain: [0, rows[rows.length - 1]!.place + rowHeight / 2], range: [top, top + rows[rows.length - 1]!.place + rowHeight / 2], axis: null },
     marks: [
+      horizontalAxis(drawing, logTicks(domain, 9)),
       plot.ruleX([1], { stroke: quiet.light, strokeDasharray: '4 3' }),
       plot.text([1], { x: (value: number) => value, frameAnchor: 'top', dy: -12, text: () => 'no gain', fill: quiet.light }),
-      plot.ruleY(known, { x1: (row) => row.gain.interval95![0], x2: (row) => row.gain.interval95![1], y, stroke: colour, strokeWidth: 1.2 }),
-      plot.ruleY(known, { x1: (row) => row.gain.interval![0], x2: (row) => row.gain.interval![1], y, stroke: colour, strokeWidth: 4 }),
+      plot.ruleY(known, { x1: (row: GainRow) => row.gain.interval95![0], x2: (row: GainRow) => row.gain.interval95![1], y, stroke: colour, strokeWidth: 1.2 }),
+      plot.ruleY(known, { x1: (row: GainRow) => row.gain.interval![0], x2: (row: GainRow) => row.gain.interval![1], y, stroke: colour, strokeWidth: 4 }),
       plot.dot(rows.filter(({ gain }) => gain.sham !== null), { x: (row: GainRow) => row.gain.sham, y, symbol: 'times', r: 4, stroke: warning.light, strokeWidth: 1.8 }),
       plot.dot(rows.filter(({ gain }) => gain.raw !== null), { x: (row: GainRow) => row.gain.raw, y, r: 4.5, stroke: quiet.light, strokeWidth: 1.6 }),
       plot.dot(known, { x: (row: GainRow) => row.gain.corrected, y, r: 5, fill: colour, symbol: (row: GainRow) => lookOf(row.look).symbol, stroke: 'none' }),

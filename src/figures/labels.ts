@@ -20,7 +20,7 @@ function isTex(label: string): boolean {
 
 /** A block's label: TeX only where it looks like it. */
 export function blockLabel(label: string): string {
-  return isTex(label) || /_/.test(label) ? glyphs(label) : label;
+  return isTex(label) || label.includes('_') ? glyphs(label) : label;
 }
 
 /** Text cut to about a number of characters; the table has the whole of it. */

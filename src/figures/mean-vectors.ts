@@ -1,11 +1,13 @@
 import type { Results, VectorResult } from '../results/schema.js';
+import { verticalAxis } from './axes.js';
+import { coordinateAxis, coordinateScale } from './coordinate.js';
 import type { Drawing } from './drawing.js';
 import { compose, finish } from './drawing.js';
 import type { Figure } from './figure.js';
 import { axisLabel, blockLabel, shortened } from './labels.js';
+import { logTicks } from './log-ticks.js';
 import { lookOf, quiet } from './palette.js';
 import { gridFor, gridHeight, pageWidth, placed, tick } from './panels.js';
-import { isLogarithmic } from './responses.js';
 
 interface Block {
   readonly title: string;
@@ -21,7 +23,7 @@ export function meanVectors(results: Results, drawing: Drawing): readonly Figure
     }),
   );
   if (blocks.length === 0) return [];
-  const grid = gridFor(blocks.length, 170, 30, 3);
+  const grid = gridFor(blocks.length, 176, 30, 3);
   const svgs = blocks.map((block) => panel(drawing, block, grid.width, grid.height));
   const notes = [{ x: 12, y: 18, text: 'mean over the fiducial realisations; band: one standard deviation of one realisation', colour: quiet.light }];
   const svg = compose(drawing, { width: pageWidth, height: gridHeight(grid, blocks.length), panels: placed(grid, svgs), notes });
@@ -35,12 +37,14 @@ export function meanVectors(results: Results, drawing: Drawing): readonly Figure
   ];
 }
 
-function panel({ document, plot }: Drawing, { title, vector }: Block, width: number, height: number): Element {
+function panel(drawing: Drawing, { title, vector }: Block, width: number, height: number): Element {
+  const { document, plot } = drawing;
   const points = vector.values.map((at, i) => {
     const [mean, deviation] = [vector.mean![i]!, vector.standardDeviation[i]!];
     return { at, mean, low: mean - deviation, high: mean + deviation };
   });
   const positive = points.every(({ low }) => low > 0) && Math.max(...points.map(({ mean }) => mean)) / Math.min(...points.map(({ mean }) => mean)) > 30;
+  const domain: [number, number] = [Math.min(...points.map(({ low }) => low)), Math.max(...points.map(({ high }) => high))];
   const { colour } = lookOf(0);
   return plot.plot({
     document,
@@ -49,10 +53,12 @@ function panel({ document, plot }: Drawing, { title, vector }: Block, width: num
     marginLeft: 56,
     marginRight: 10,
     marginTop: 28,
-    marginBottom: 38,
-    x: { label: axisLabel(vector.coordinate ?? 'entry', vector.unit), labelAnchor: 'center', labelArrow: 'none', ticks: 4, tickFormat: tick, type: isLogarithmic(vector) ? 'log' : 'linear' },
-    y: { label: null, ticks: 5, tickFormat: tick, type: positive ? 'log' : 'linear' },
+    marginBottom: 42,
+    x: { label: axisLabel(vector.coordinate ?? 'entry', vector.unit), labelAnchor: 'center', labelArrow: 'none', ...coordinateScale(vector) },
+    y: positive ? { label: null, type: 'log', domain, ticks: [] } : { label: null, ticks: 5, tickFormat: tick },
     marks: [
+      ...coordinateAxis(drawing, vector),
+      ...(positive ? [verticalAxis(drawing, logTicks(domain, 5))] : []),
       plot.areaY(points, { x: 'at', y1: 'low', y2: 'high', fill: colour, fillOpacity: 0.22 }),
       plot.line(points, { x: 'at', y: 'mean', stroke: colour, strokeWidth: 1.6 }),
       plot.text([shortened(title, 38)], { frameAnchor: 'top', dy: -16, fontWeight: 'bold', fontSize: 11 }),

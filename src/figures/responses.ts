@@ -1,4 +1,5 @@
 import type { Results, VectorResult } from '../results/schema.js';
+import { coordinateAxis, coordinateScale } from './coordinate.js';
 import type { Drawing } from './drawing.js';
 import { compose, finish } from './drawing.js';
 import type { Figure } from './figure.js';
@@ -34,7 +35,7 @@ export function responses(results: Results, drawing: Drawing): readonly Figure[]
     const blocks = blocksOf(results, probe);
     const across = Math.min(blocks.length, 4);
     const cases = chunks(blocks, across).flatMap((row) => results.parameters.flatMap(({ name }) => row.map((block) => ({ name, block }))));
-    const grid = gridFor(cases.length, 132, 34, across);
+    const grid = gridFor(cases.length, 140, 34, across);
     const svgs = cases.map(({ name, block }) => panel(results, drawing, name, block, grid.width, grid.height));
     const label = results.probes[probe]?.label ?? probe;
     const notes = [{ x: 12, y: 20, text: `${label}: derivative / (standard deviation of the entry); band: its noise, one standard error`, colour: quiet.light }];
@@ -62,7 +63,8 @@ function pointsOf({ vector }: Block, parameter: string): readonly Point[] {
   });
 }
 
-function panel(results: Results, { document, plot }: Drawing, parameter: string, block: Block, width: number, height: number): Element {
+function panel(results: Results, drawing: Drawing, parameter: string, block: Block, width: number, height: number): Element {
+  const { document, plot } = drawing;
   const points = pointsOf(block, parameter);
   const { colour } = lookOf(0);
   const { vector } = block;
@@ -73,21 +75,17 @@ function panel(results: Results, { document, plot }: Drawing, parameter: string,
     marginLeft: 50,
     marginRight: 10,
     marginTop: 22,
-    marginBottom: 34,
-    x: { label: axisLabel(vector.coordinate ?? 'entry', vector.unit), labelAnchor: 'center', labelArrow: 'none', ticks: 4, tickFormat: tick, type: isLogarithmic(vector) ? 'log' : 'linear' },
+    marginBottom: 40,
+    x: { label: axisLabel(vector.coordinate ?? 'entry', vector.unit), labelAnchor: 'center', labelArrow: 'none', ...coordinateScale(vector) },
     y: { label: null, ticks: 4, tickFormat: tick, nice: true },
     marks: [
+      ...coordinateAxis(drawing, vector),
       plot.ruleY([0], { stroke: quiet.light, strokeDasharray: '3 3' }),
       plot.areaY(points, { x: 'at', y1: 'low', y2: 'high', fill: colour, fillOpacity: 0.22 }),
       plot.line(points, { x: 'at', y: 'value', stroke: colour, strokeWidth: 1.6 }),
       plot.text([`${parameterLabel(results, parameter)}  ${shortened(titleOf(block), 18)}`], { frameAnchor: 'top', dy: -14, fontWeight: 'bold', fontSize: 11 }),
     ],
   });
-}
-
-/** Positive coordinates over more than a decade are the trade's cue for a logarithmic axis. */
-export function isLogarithmic({ values, coordinate }: VectorResult): boolean {
-  return coordinate !== null && values.every((value) => value > 0) && Math.max(...values) / Math.min(...values) > 10;
 }
 
 function describe(results: Results, label: string, blocks: readonly Block[]): string {

@@ -1,4 +1,5 @@
 import type { Results, ScanResult } from '../results/schema.js';
+import { verticalAxis } from './axes.js';
 import type { Drawing } from './drawing.js';
 import { compose, finish } from './drawing.js';
 import type { Figure } from './figure.js';
@@ -56,14 +57,15 @@ function axes(lines: readonly Line[], values: readonly number[], label: string, 
   const { scan: first } = lines[0]!;
   const domain: [number, number] = [Math.min(...values) / 1.1, Math.max(...values) * 1.1];
   return {
+    domain,
     width,
     height,
     marginLeft: 52,
     marginRight: 12,
     marginTop: 30,
-    marginBottom: 42,
+    marginBottom: 46,
     x: { label: `${first.keep === 'below' ? 'largest' : 'smallest'} ${axisLabel(first.coordinate, first.unit)} kept`, labelAnchor: 'center' as const, labelArrow: 'none' as const, ticks: 4, tickFormat: tick },
-    y: { type: 'log' as const, domain, label, labelArrow: 'none' as const, ticks: [...logTicks(domain, 7)], tickFormat: tick, grid: false },
+    y: { type: 'log' as const, domain, label, labelArrow: 'none' as const, ticks: [] },
   };
 }
 
@@ -77,18 +79,16 @@ function errorFigure(results: Results, drawing: Drawing, lines: readonly Line[])
     }));
     const values = drawn.flatMap(({ marginalised, fixed }) => [...marginalised, ...fixed].map(({ value }) => value));
     const label = `error of ${parameterLabel(results, parameter)}`;
-    return plot.plot({
-      document,
-      ...axes(lines, values.length === 0 ? [1] : values, label, width, height),
-      marks: drawn.flatMap(({ look, marginalised, fixed }) => {
+    const { domain, ...options } = axes(lines, values.length === 0 ? [1] : values, label, width, height);
+    const curves = drawn.flatMap(({ look, marginalised, fixed }) => {
         const { colour, symbol } = lookOf(look);
         return [
           plot.line(fixed, { x: 'at', y: 'value', stroke: colour, strokeDasharray: '5 3', strokeWidth: 1.2 }),
           plot.line(marginalised, { x: 'at', y: 'value', stroke: colour, strokeWidth: 2 }),
           plot.dot(marginalised, { x: 'at', y: 'value', fill: colour, stroke: 'none', symbol, r: 3.2 }),
         ];
-      }),
     });
+    return plot.plot({ document, ...options, marks: [verticalAxis(drawing, logTicks(domain, 7)), ...curves] });
   });
   return finish(svg, {
     name: 'scan-errors',
@@ -104,10 +104,12 @@ function gainFigure(results: Results, drawing: Drawing, lines: readonly Line[]):
   const svg = frame(results, drawing, lines, (parameter, width, height) => {
     const drawn = lines.map((line) => ({ ...line, gain: points(line.scan, line.scan.improvements![parameter]!.marginalised) }));
     const values = drawn.flatMap(({ gain }) => gain.flatMap(({ low, high }) => [low, high]));
+    const { domain, ...options } = axes(lines, [1, ...values], `gain in ${parameterLabel(results, parameter)}`, width, height);
     return plot.plot({
       document,
-      ...axes(lines, [1, ...values], `gain in ${parameterLabel(results, parameter)}`, width, height),
+      ...options,
       marks: [
+        verticalAxis(drawing, logTicks(domain, 7)),
         plot.ruleY([1], { stroke: quiet.light, strokeDasharray: '4 3' }),
         ...drawn.flatMap(({ look, gain }) => {
           const { colour, symbol } = lookOf(look);
