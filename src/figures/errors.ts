@@ -74,10 +74,10 @@ function panel(
     marginRight: 18,
     marginTop: 26,
     marginBottom: 44,
-    x: { type: 'log', domain, label: `error of ${parameterLabel(results, parameter.name)}${unit}`, labelAnchor: 'center', labelArrow: 'none', ticks: [] },
+    x: { type: 'log', domain },
     y: { type: 'linear', domain: [-0.5, rows.length - 0.5], reverse: true, axis: null },
     marks: [
-      horizontalAxis(drawing, logTicks(domain, 5)),
+      horizontalAxis(drawing, { ticks: logTicks(domain, 5), label: `error of ${parameterLabel(results, parameter.name)}${unit}` }),
       plot.ruleX(lines, { x: 'at', stroke: quiet.light, strokeDasharray: '4 3' }),
       plot.text(lines, { x: 'at', text: 'label', frameAnchor: 'top', textAnchor: 'end', dx: 4, dy: -10, fill: quiet.light, fontSize: 11 }),
       plot.ruleY(has(({ marginalised }) => marginalised), { y: 'place', x1: (row: Row) => row.marginalised.interval95![0], x2: (row: Row) => row.marginalised.interval95![1], stroke: colour, strokeWidth: 1.6 }),

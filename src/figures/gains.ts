@@ -105,10 +105,10 @@ function drawRows(drawing: Drawing, rows: readonly GainRow[], height: number): E
     marginTop: top,
     marginBottom: 44,
     style: { fontSize: '12px' },
-    x: { type: 'log', domain, label: 'error of the baseline / error of the combination (above 1 is better)', labelAnchor: 'center', labelArrow: 'none', ticks: [] },
+    x: { type: 'log', domain },
     y: { type: 'linear', domain: [0, rows[rows.length - 1]!.place + rowHeight / 2], range: [top, top + rows[rows.length - 1]!.place + rowHeight / 2], axis: null },
     marks: [
-      horizontalAxis(drawing, logTicks(domain, 9)),
+      horizontalAxis(drawing, { ticks: logTicks(domain, 9), label: 'error of the baseline / error of the combination (above 1 is better)' }),
       plot.ruleX([1], { stroke: quiet.light, strokeDasharray: '4 3' }),
       plot.text([1], { x: (value: number) => value, frameAnchor: 'top', dy: -12, text: () => 'no gain', fill: quiet.light }),
       plot.ruleY(known, { x1: (row: GainRow) => row.gain.interval95![0], x2: (row: GainRow) => row.gain.interval95![1], y, stroke: colour, strokeWidth: 1.2 }),

@@ -4,7 +4,7 @@ import { coordinateAxis, coordinateScale } from './coordinate.js';
 import type { Drawing } from './drawing.js';
 import { compose, finish } from './drawing.js';
 import type { Figure } from './figure.js';
-import { axisLabel, blockLabel, shortened } from './labels.js';
+import { blockLabel, shortened } from './labels.js';
 import { logTicks } from './log-ticks.js';
 import { lookOf, quiet } from './palette.js';
 import { gridFor, gridHeight, pageWidth, placed, tick } from './panels.js';
@@ -54,11 +54,11 @@ function panel(drawing: Drawing, { title, vector }: Block, width: number, height
     marginRight: 10,
     marginTop: 28,
     marginBottom: 42,
-    x: { label: axisLabel(vector.coordinate ?? 'entry', vector.unit), labelAnchor: 'center', labelArrow: 'none', ...coordinateScale(vector) },
-    y: positive ? { label: null, type: 'log', domain, ticks: [] } : { label: null, ticks: 5, tickFormat: tick },
+    x: coordinateScale(vector),
+    y: positive ? { type: 'log', domain } : { label: null, ticks: 5, tickFormat: tick },
     marks: [
       ...coordinateAxis(drawing, vector),
-      ...(positive ? [verticalAxis(drawing, logTicks(domain, 5))] : []),
+      ...(positive ? [verticalAxis(drawing, { ticks: logTicks(domain, 5), label: null })] : []),
       plot.areaY(points, { x: 'at', y1: 'low', y2: 'high', fill: colour, fillOpacity: 0.22 }),
       plot.line(points, { x: 'at', y: 'mean', stroke: colour, strokeWidth: 1.6 }),
       plot.text([shortened(title, 38)], { frameAnchor: 'top', dy: -16, fontWeight: 'bold', fontSize: 11 }),

@@ -3,7 +3,7 @@ import { coordinateAxis, coordinateScale } from './coordinate.js';
 import type { Drawing } from './drawing.js';
 import { compose, finish } from './drawing.js';
 import type { Figure } from './figure.js';
-import { axisLabel, blockLabel, parameterLabel, parameterName, shortened } from './labels.js';
+import { blockLabel, parameterLabel, parameterName, shortened } from './labels.js';
 import { lookOf, quiet } from './palette.js';
 import { gridFor, gridHeight, pageWidth, placed, tick } from './panels.js';
 
@@ -76,7 +76,7 @@ function panel(results: Results, drawing: Drawing, parameter: string, block: Blo
     marginRight: 10,
     marginTop: 22,
     marginBottom: 40,
-    x: { label: axisLabel(vector.coordinate ?? 'entry', vector.unit), labelAnchor: 'center', labelArrow: 'none', ...coordinateScale(vector) },
+    x: coordinateScale(vector),
     y: { label: null, ticks: 4, tickFormat: tick, nice: true },
     marks: [
       ...coordinateAxis(drawing, vector),

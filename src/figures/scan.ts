@@ -53,7 +53,7 @@ function frame(results: Results, drawing: Drawing, lines: readonly Line[], draw:
   return compose(drawing, { width: pageWidth, height: gridHeight(grid, svgs.length), panels: placed(grid, svgs), notes });
 }
 
-function axes(lines: readonly Line[], values: readonly number[], label: string, width: number, height: number) {
+function axes(lines: readonly Line[], values: readonly number[], width: number, height: number) {
   const { scan: first } = lines[0]!;
   const domain: [number, number] = [Math.min(...values) / 1.1, Math.max(...values) * 1.1];
   return {
@@ -65,7 +65,7 @@ function axes(lines: readonly Line[], values: readonly number[], label: string, 
     marginTop: 30,
     marginBottom: 46,
     x: { label: `${first.keep === 'below' ? 'largest' : 'smallest'} ${axisLabel(first.coordinate, first.unit)} kept`, labelAnchor: 'center' as const, labelArrow: 'none' as const, ticks: 4, tickFormat: tick },
-    y: { type: 'log' as const, domain, label, labelArrow: 'none' as const, ticks: [] },
+    y: { type: 'log' as const, domain },
   };
 }
 
@@ -79,7 +79,7 @@ function errorFigure(results: Results, drawing: Drawing, lines: readonly Line[])
     }));
     const values = drawn.flatMap(({ marginalised, fixed }) => [...marginalised, ...fixed].map(({ value }) => value));
     const label = `error of ${parameterLabel(results, parameter)}`;
-    const { domain, ...options } = axes(lines, values.length === 0 ? [1] : values, label, width, height);
+    const { domain, ...options } = axes(lines, values.length === 0 ? [1] : values, width, height);
     const curves = drawn.flatMap(({ look, marginalised, fixed }) => {
         const { colour, symbol } = lookOf(look);
         return [
@@ -88,7 +88,7 @@ function errorFigure(results: Results, drawing: Drawing, lines: readonly Line[])
           plot.dot(marginalised, { x: 'at', y: 'value', fill: colour, stroke: 'none', symbol, r: 3.2 }),
         ];
     });
-    return plot.plot({ document, ...options, marks: [verticalAxis(drawing, logTicks(domain, 7)), ...curves] });
+    return plot.plot({ document, ...options, marks: [verticalAxis(drawing, { ticks: logTicks(domain, 7), label }), ...curves] });
   });
   return finish(svg, {
     name: 'scan-errors',
@@ -104,12 +104,12 @@ function gainFigure(results: Results, drawing: Drawing, lines: readonly Line[]):
   const svg = frame(results, drawing, lines, (parameter, width, height) => {
     const drawn = lines.map((line) => ({ ...line, gain: points(line.scan, line.scan.improvements![parameter]!.marginalised) }));
     const values = drawn.flatMap(({ gain }) => gain.flatMap(({ low, high }) => [low, high]));
-    const { domain, ...options } = axes(lines, [1, ...values], `gain in ${parameterLabel(results, parameter)}`, width, height);
+    const { domain, ...options } = axes(lines, [1, ...values], width, height);
     return plot.plot({
       document,
       ...options,
       marks: [
-        verticalAxis(drawing, logTicks(domain, 7)),
+        verticalAxis(drawing, { ticks: logTicks(domain, 7), label: `gain in ${parameterLabel(results, parameter)}` }),
         plot.ruleY([1], { stroke: quiet.light, strokeDasharray: '4 3' }),
         ...drawn.flatMap(({ look, gain }) => {
           const { colour, symbol } = lookOf(look);

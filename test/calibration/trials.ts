@@ -1,7 +1,7 @@
 import { inverse, Matrix as Dense } from 'ml-matrix';
 import { forecast } from '../../src/forecast/forecast.js';
 import { z95OneSided } from '../../src/forecast/thresholds.js';
-import type { Estimate, Results } from '../../src/results/schema.js';
+import type { Estimate, Improvement, Results } from '../../src/results/schema.js';
 import type { GaussianModel } from '../fixtures/gaussian-study.js';
 import { gaussianStudy, trueFisher } from '../fixtures/gaussian-study.js';
 
@@ -9,7 +9,7 @@ import { gaussianStudy, trueFisher } from '../fixtures/gaussian-study.js';
 export interface Trial {
   readonly results: Results;
   readonly error: Estimate;
-  readonly gain: Estimate;
+  readonly gain: Improvement;
   readonly trueError: number;
   readonly trueGain: number;
 }
