@@ -41,6 +41,13 @@ describe('distances of the fiducial realisations', () => {
     expect(most).toBeLessThan(1.95 / Math.sqrt(600));
   });
 
+  it('have uniform tails for as few as 12 realisations of 4 entries, where the law is far from chi-square', () => {
+    const studies = 600;
+    const sorted = Float64Array.from(range(studies), (k) => distancesOf(partOf(normalRows(12, 4, 8000 + k), 4))!.tails[k % 12]!).sort();
+    const most = sorted.reduce((worst, tail, k) => Math.max(worst, Math.abs(tail - (k + 0.5) / studies)), 0);
+    expect(most).toBeLessThan(1.95 / Math.sqrt(studies));
+  });
+
   it('name an outlier by its seed, and few of Gaussian data', () => {
     const plain = forecastOf(studyOf(rows, 4)).gaussianity![0]!;
     expect(plain.outliers.length).toBeLessThanOrEqual(1);

@@ -3,8 +3,8 @@ import { whole } from '../../src/forecast/combined.js';
 import { realisationsNeeded } from '../../src/forecast/needed.js';
 import type { GaussianModel } from '../fixtures/gaussian-study.js';
 import { gaussianStudy } from '../fixtures/gaussian-study.js';
-import { parameter } from '../fixtures/memory-study.js';
-import { combinedOf, cosine, forecastOf, range } from './seeded-study.js';
+import { columnsOf, combination, ensembleRun, memoryStudy, parameter, realisations } from '../fixtures/memory-study.js';
+import { combinedOf, cosine, forecastOf, normalRows, range } from './seeded-study.js';
 
 /** Two parameters that respond nearly alike, under noise that hides what tells them apart. */
 const model: GaussianModel = {
@@ -50,6 +50,27 @@ describe('the realisations that an undetermined matrix needs', () => {
     const before = undetermined.length / 60;
     // At most the share of new studies of the old size, less what chance allows (one standard deviation would be 0.1 of it).
     expect(stillUndetermined / asked.length).toBeLessThan(before);
+  });
+
+  it('are 2 SE N/(lambda + 1.645 SE) for one entry and one parameter, by hand', () => {
+    // All in units of the raw matrix, the square of the mean: h and S cancel.
+    const rows = [1.1, -0.9, 1.3, -1.2, 0.8, -0.7, 0.2, -0.4];
+    const pairs = (of: readonly number[]): number => {
+      const sum = of.reduce((total, value) => total + value, 0);
+      return (sum ** 2 - of.reduce((total, value) => total + value ** 2, 0)) / (of.length * (of.length - 1));
+    };
+    const raw = (rows.reduce((total, value) => total + value, 0) / 8) ** 2;
+    const lambda = pairs(rows) / raw;
+    expect(lambda).toBeLessThan(0);
+    const error = Math.sqrt(rows.reduce((sum, _, s) => sum + (7 / 8) * (pairs(rows.filter((_unused, i) => i !== s)) / raw - lambda) ** 2, 0));
+    const expected = Math.ceil((2 * error * 8) / (lambda + 1.6448536269514727 * error));
+    const study = memoryStudy({
+      parameters: [parameter('p0')],
+      combinations: [combination('joint', ['base'])],
+      runs: [ensembleRun('run', columnsOf('base', 1), realisations(normalRows(40, 1, 1), 1), { p0: { kind: 'per realisation', realisations: realisations(Float64Array.from(rows), 1) } })],
+    });
+    expect(expected).toBeGreaterThan(8);
+    expect(realisationsNeeded(combinedOf(study, 'joint'))).toBe(expected);
   });
 
   it('do not depend on the unit of a parameter', () => {
