@@ -228,11 +228,11 @@ describe('errors without the smallest directions', () => {
     const hand = { ...study, parameters: [parameter('p0')], combinations: [combination('base', ['base'])], runs: [run], prior: null };
     expect(smallestDirections(combinedOf(hand, 'base'))!.removed).toEqual([0]);
     const three = { data: Float64Array.from([4, 1.2, 0, 1.2, 1, 0, 0, 0, 1]), rows: 3, columns: 3 };
-    const longer = momentsRun('run', columnsOf('base', 3), { covariance: three, realisations: null, derivatives: { p0: { kind: 'exact', values: Float64Array.from([2, 3, 0.5]) } } });
+    const longer = momentsRun('run', columnsOf('base', 3), { covariance: three, realisations: null, derivatives: { p0: { kind: 'exact', values: Float64Array.from([2, 1, 0.5]) } } });
     const found = smallestDirections(combinedOf({ ...hand, runs: [longer] }, 'base'))!;
     expect(found.removed).toEqual([0, 1]);
     expect(found.condition).toBeCloseTo(1.6 / 0.4, 12);
-    // (1 + 3)^2/(2 * 1.6) from the sum of 2/2 and 3/1, and 0.5^2 from the third entry.
-    expect(found.logs[1]![0]).toBeCloseTo(-Math.log(16 / 3.2 + 0.25) / 2, 12);
+    // (1 + 1)^2/(2 * 1.6) from the sum of 2/2 and 1/1, and 0.5^2 from the third entry.
+    expect(found.logs[1]![0]).toBeCloseTo(-Math.log(4 / 3.2 + 0.25) / 2, 12);
   });
 });

@@ -43,6 +43,11 @@ describe('a budget', () => {
     expect(predicted(standing, both!.derivatives, both!.fiducials)).toBeLessThanOrEqual(0.02 * (1 + 1e-12));
   });
 
+  it('gives the derivatives what a small covariance part leaves of the goal, not just half', () => {
+    const small: Standing = { ...standing, varianceCovariance: 0.001 ** 2 };
+    expect(budgetFor(small, 0.03).both).toEqual({ derivatives: Math.ceil((100 * 0.0016) / (0.0009 - 1e-6)), fiducials: 210 });
+  });
+
   it('asks for nothing where there is nothing of a kind', () => {
     const exact: Standing = { ...standing, varianceDerivatives: 0, derivativeRealisations: null };
     expect(budgetFor(exact, 0.02)).toMatchObject({ derivatives: null });

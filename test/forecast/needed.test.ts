@@ -54,7 +54,7 @@ describe('the realisations that an undetermined matrix needs', () => {
 
   it('are 2 SE N/(lambda + 1.645 SE) for one entry and one parameter, by hand', () => {
     // All in units of the raw matrix, the square of the mean: h and S cancel.
-    const rows = [1.1, -0.9, 1.3, -1.2, 0.8, -0.7, 0.2, -0.4];
+    const rows = [1.1, -0.9, 1.3, -1.2, 0.8, -0.7, 0.9, 0.4];
     const pairs = (of: readonly number[]): number => {
       const sum = of.reduce((total, value) => total + value, 0);
       return (sum ** 2 - of.reduce((total, value) => total + value ** 2, 0)) / (of.length * (of.length - 1));
