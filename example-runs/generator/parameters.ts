@@ -12,7 +12,7 @@ export interface Parameters {
   readonly shear_bias: number;
 }
 
-export type ParameterName = keyof Parameters;
+type ParameterName = keyof Parameters;
 
 export const fiducial: Parameters = { omega_m: 0.3, sigma_8: 0.8, n_s: 0.96, feedback: 0, shear_bias: 0 };
 

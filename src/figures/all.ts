@@ -2,7 +2,7 @@ import { convergence } from './convergence.js';
 import { dataCorrelation } from './data-correlation.js';
 import { ellipses } from './ellipses.js';
 import { errors } from './errors.js';
-import type { FigureMaker } from './figure.js';
+import type { FigureMaker } from './figure-maker.js';
 import { gains } from './gains.js';
 import { meanVectors } from './mean-vectors.js';
 import { parameterCorrelation } from './parameter-correlation.js';

@@ -1,5 +1,5 @@
 import type * as PlotModule from '@observablehq/plot';
-import type { Figure } from './figure.js';
+import type { Figure, FigureWords } from './figure.js';
 import { tidy } from './tidy.js';
 
 /** The one document that everything is drawn in, and the library that draws. */
@@ -78,11 +78,8 @@ function drawNote(document: Document, note: Note): Element {
   return text;
 }
 
-/** The words of a figure. */
-export type Words = Pick<Figure, 'name' | 'title' | 'alternative' | 'caption'>;
-
 /** A finished figure from what was composed. */
-export function finish(svg: Element, words: Words): Figure {
+export function finish(svg: Element, words: FigureWords): Figure {
   tidy(svg, words.name, words.title, words.alternative);
   const inline = svg.outerHTML;
   const ground = svg.ownerDocument.createElementNS(namespace, 'rect');

@@ -41,14 +41,13 @@ export function lookOf(index: number): Look {
 
 /** Quiet ink for what is not a measurement: rules, references, what is less sure. */
 export const quiet: Colour = { light: '#6b7280', dark: '#a3acb8' };
-export const faint: Colour = { light: '#d5d9df', dark: '#3d4653' };
 /** The sham gain, and everything that says "this is noise". */
 export const warning: Colour = { light: '#a01c2e', dark: '#ff8d97' };
 /** Ends of the correlation scale. */
 export const negative: Colour = { light: '#8a4b08', dark: '#e0a15c' };
 export const positive: Colour = { light: '#1f5f8b', dark: '#7fb9e4' };
 
-const all: readonly Colour[] = [...hues, quiet, faint, warning, negative, positive];
+const all: readonly Colour[] = [...hues, quiet, warning, negative, positive];
 
 /** Rules for the report's style sheet that give inlined figures the dark values. Attributes yield to any rule. */
 export function darkRules(scope: string): string {

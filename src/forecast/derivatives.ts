@@ -14,7 +14,7 @@ export interface Strand {
   readonly rows: Matrix;
 }
 
-export type Matching = 'by seed' | 'by index' | 'unmatched' | 'partly matched' | 'does not apply';
+type Matching = 'by seed' | 'by index' | 'unmatched' | 'partly matched' | 'does not apply';
 
 /** The derivative of one run's data vector with respect to one parameter. */
 export interface RunDerivative {

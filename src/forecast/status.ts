@@ -16,7 +16,7 @@ export interface Evidence {
   readonly reason: string;
 }
 
-export interface View {
+interface View {
   readonly name: string;
   readonly log: number | null;
 }

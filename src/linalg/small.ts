@@ -12,7 +12,7 @@ export type Inversion =
   | { readonly kind: 'ill conditioned'; readonly condition: number };
 
 /** Beyond this no digit of an inverse is left in double precision (methods, section 3). */
-export const largestCondition = 1e14;
+const largestCondition = 1e14;
 
 /** Zero matrix of p x p. */
 export function zeros(size: number): Small {

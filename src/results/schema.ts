@@ -11,7 +11,7 @@ import { interval, matrix, number, optionalNumber, perParameter } from './primit
 
 export const statusSchema = z.enum(['settled', 'correctable', 'unsettled', 'undetermined', 'not assessable']);
 export const verdictSchema = z.enum(['supported', 'contradicted', 'too close to call', 'not settled', 'not assessable']);
-export const levelSchema = z.enum(['ok', 'note', 'warning', 'error']);
+const levelSchema = z.enum(['ok', 'note', 'warning', 'error']);
 
 /** An estimate of an error or of a ratio of errors. Intervals are exp(log corrected -+ z SE). */
 const estimateShape = {

@@ -27,7 +27,7 @@ export interface Study {
   readonly place: (path: readonly (string | number)[]) => Place;
 }
 
-export interface Author {
+interface Author {
   readonly name: string;
   readonly orcid: string | null;
   readonly affiliation: string | null;

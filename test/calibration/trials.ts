@@ -22,8 +22,8 @@ export function runTrials(model: GaussianModel, count: number, firstSeed: number
     const results = forecast(gaussianStudy(model, firstSeed + k), { name: 'trial', version: '0' });
     return {
       results,
-      error: results.combinations['joint']!.errors['p0']!.marginalised,
-      gain: results.improvements['joint']!['p0']!.marginalised,
+      error: results.combinations.joint!.errors.p0!.marginalised,
+      gain: results.improvements.joint!.p0!.marginalised,
       trueError: joint,
       trueGain: base / joint,
     };
