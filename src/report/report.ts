@@ -1,9 +1,11 @@
 import type { Figure } from '../figures/figure.js';
 import type { Results } from '../results/schema.js';
 import { csvFiles } from './csv/all.js';
+import { cssString } from './html/css-string.js';
 import { renderHtml } from './html/render.js';
 import { cleanInline } from './markdown/clean.js';
 import { writeMarkdown } from './markdown/write.js';
+import { printable } from './printable.js';
 import type { Templates } from './templates.js';
 import { reportTree } from './tree.js';
 import { wordsOf } from './words/labels.js';
@@ -11,7 +13,8 @@ import { wordsOf } from './words/labels.js';
 export type ReportPart = 'html' | 'markdown' | 'figures' | 'tables';
 
 /** The files of a report by their relative path. `report.md` shows the figures beside it, so asking for it writes them too. */
-export async function renderReport(results: Results, parts: ReadonlySet<ReportPart>, templates: Templates): Promise<ReadonlyMap<string, string>> {
+export async function renderReport(given: Results, parts: ReadonlySet<ReportPart>, templates: Templates): Promise<ReadonlyMap<string, string>> {
+  const results = printable(given);
   const files = new Map<string, string>();
   const drawn = parts.has('html') || parts.has('markdown') || parts.has('figures') ? await draw(results) : new Map<string, readonly Figure[]>();
   const figures = [...drawn.values()].flat();
@@ -19,7 +22,7 @@ export async function renderReport(results: Results, parts: ReadonlySet<ReportPa
     const tree = reportTree(results, drawn, templates.pages);
     const title = wordsOf(cleanInline(results.study.title));
     if (parts.has('markdown')) files.set('report.md', writeMarkdown(tree));
-    if (parts.has('html')) files.set('report.html', renderHtml(tree, figures, title, await styleSheet(templates.style)));
+    if (parts.has('html')) files.set('report.html', renderHtml(tree, figures, title, await styleSheet(templates.style, title)));
   }
   if (parts.has('figures') || parts.has('markdown')) {
     for (const { name, standalone } of figures) files.set(`figures/${name}.svg`, standalone);
@@ -36,7 +39,8 @@ async function draw(results: Results): Promise<Map<string, readonly Figure[]>> {
   return new Map(Object.entries(figureMakers).map(([name, make]) => [name, make(results, drawing)]));
 }
 
-async function styleSheet(style: string): Promise<string> {
+async function styleSheet(style: string, title: string): Promise<string> {
   const { darkRules } = await import('../figures/palette.js');
-  return `${style}\n@media screen and (prefers-color-scheme:dark){${darkRules('figure.plot')}}\n`;
+  const running = `@page{@top-left{content:${cssString(title)};font:8pt sans-serif}}`;
+  return `${style}\n${running}\n@media screen and (prefers-color-scheme:dark){${darkRules('figure.plot')}}\n`;
 }

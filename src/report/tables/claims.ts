@@ -12,14 +12,13 @@ import { numbers, words } from './table.js';
 export const claims: TableMaker = (results) => ({
   id: 'claims',
   caption: say`The claims, tested one-sided at 95 % on the corrected value with its whole uncertainty.`,
-  columns: [words('Claim'), words('Verdict'), words('Tested'), numbers('Raw'), numbers('Corrected (68 % interval)'), numbers('95 % interval')],
+  columns: [words('Claim'), words('Verdict'), words('Tested'), numbers('Raw'), numbers('Corrected (95 % interval)')],
   rows: results.claims.map((claim) => [
     cleanInline(claim.text),
     sign(claim.verdict),
     tested(results, claim),
     rawOf(claim),
-    estimateOf(claim),
-    claim.interval95 === null || claim.estimate === null ? noNumber(claim.status) : interval95Of(claim),
+    claim.estimate === null ? noNumber(claim.status) : withInterval(claim.estimate, errorOf(claim), claim.interval95),
   ]),
 });
 
@@ -47,10 +46,4 @@ export function rawOf(claim: ClaimResult): string {
 
 export function estimateOf(claim: ClaimResult): string {
   return claim.estimate === null ? noNumber(claim.status) : withInterval(claim.estimate, errorOf(claim), claim.interval);
-}
-
-export function interval95Of(claim: ClaimResult): string {
-  const [low, high] = claim.interval95 ?? [Number.NaN, Number.NaN];
-  const error = errorOf(claim);
-  return `${roundTo(low, error)} to ${roundTo(high, error)}`;
 }

@@ -7,7 +7,7 @@ import type { SentenceMaker } from './sentence-maker.js';
 
 export const responseLead: SentenceMaker = (results) => [
   paragraph(
-    ...say`Where the response to a parameter does not stand out of its own noise, the plain forecast counts noise as information. More than twice the standard error away from zero are, for`,
+    ...say`Where the response to a parameter does not stand out of its own noise, the plain forecast counts noise as information. The derivative is more than twice its standard error away from zero, for`,
   ),
   list(targets(results).map((name) => responseItem(results, name))),
 ];
@@ -23,5 +23,5 @@ function responseItem(results: Results, name: string): PhrasingContent[] {
     all += derivative.value.length;
   }
   const label = parameterLabel(results, name);
-  return all === 0 ? say`${label}: cannot tell, no derivative has a noise that is known.` : say`${label}: ${String(clear)} of ${String(all)} entries.`;
+  return all === 0 ? say`${label}: cannot tell, no derivative has a noise that is known.` : say`${label}: in ${String(clear)} of ${String(all)} entries.`;
 }
