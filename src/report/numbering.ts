@@ -12,8 +12,8 @@ export function newNumbering(): Numbering {
 }
 
 /** The next number of its kind, in bold: "Figure 3." */
-export function numbered(numbering: Numbering, kind: 'Figure' | 'Table', id: string): PhrasingContent {
-  if (numbering.numbers.has(id)) throw new Error(`${id} is in the report twice`);
+export function numbered(numbering: Numbering, kind: 'Figure' | 'Table', id: string, fail: (what: string) => Error): PhrasingContent {
+  if (numbering.numbers.has(id)) throw fail(`${id} is in the report twice`);
   const before = [...numbering.numbers.values()].filter((label) => label.startsWith(kind)).length;
   const label = `${kind} ${String(before + 1)}`;
   numbering.numbers.set(id, label);

@@ -17,13 +17,13 @@ export const figure: DirectiveKind = {
       const names = all.map((one) => one.name).join(', ');
       throw new TemplateError(scope.page, directive, `the figure "${name!}" has no "${only}"; it has ${names}`);
     }
-    return chosen.map((one): Nodes => frame(one, scope));
+    return chosen.map((one): Nodes => frame(one, scope, (what) => new TemplateError(scope.page, directive, what)));
   },
 };
 
-function frame(one: Figure, scope: Scope): Frame {
+function frame(one: Figure, scope: Scope, fail: (what: string) => Error): Frame {
   const id = `fig-${one.name}`;
-  const label = numbered(scope.numbering, 'Figure', id);
+  const label = numbered(scope.numbering, 'Figure', id, fail);
   return {
     type: 'frame',
     data: { hName: 'figure', hProperties: { id, className: ['plot'] } },

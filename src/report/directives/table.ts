@@ -1,17 +1,20 @@
-import { tableMakers } from '../tables/all.js';
+import { combinationTableMakers, tableMakers } from '../tables/all.js';
 import { tableFrame } from '../tables/table.js';
 import { reference } from '../numbering.js';
 import { paragraph, say } from '../markdown/nodes.js';
 import type { DirectiveKind } from './directive.js';
-import { named, TemplateError } from './template-error.js';
+import { maker } from './maker.js';
+import { TemplateError } from './template-error.js';
 
 /** `::table{name=errors}`: a numbered table; nothing where it would be empty. */
 export const table: DirectiveKind = {
   form: 'leafDirective',
   attributes: { name: 'required' },
   render: ({ name }, directive, scope) => {
-    const made = named(tableMakers, name!, 'table', scope.page, directive)(scope.results, scope.combination);
-    return made === null || made.rows.length === 0 ? [] : [tableFrame(made, scope.numbering)];
+    const make = maker(tableMakers, combinationTableMakers, name!, 'table', directive, scope);
+    const made = make(scope.results);
+    const fail = (what: string): Error => new TemplateError(scope.page, directive, what);
+    return made === null || made.rows.length === 0 ? [] : [tableFrame(made, scope.numbering, fail)];
   },
 };
 

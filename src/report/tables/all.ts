@@ -8,17 +8,15 @@ import { derivatives, factors } from './methods.js';
 import { inputs, runs } from './provenance.js';
 import { responses } from './responses.js';
 import { fixedScan, scan } from './scan.js';
-import type { TableMaker } from './table.js';
+import type { CombinationTableMaker, TableMaker } from './table.js';
 import { gainViews, statuses, verdicts, views } from './views.js';
 
 export const tableMakers: Readonly<Record<string, TableMaker>> = {
   checks,
   claims,
   combinations,
-  derivatives,
   errors,
   'errors-nuisance': nuisanceErrors,
-  factors,
   'global-correlations': globalCorrelations,
   improvements,
   'improvements-fixed': fixedImprovements,
@@ -34,3 +32,6 @@ export const tableMakers: Readonly<Record<string, TableMaker>> = {
   views,
   'views-gains': gainViews,
 };
+
+/** Tables that stand inside `:::each`. */
+export const combinationTableMakers: Readonly<Record<string, CombinationTableMaker>> = { derivatives, factors };

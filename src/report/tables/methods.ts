@@ -4,13 +4,12 @@ import type { Said } from '../markdown/nodes.js';
 import { cite, inlineMath, say } from '../markdown/nodes.js';
 import { combinationLabel, parameterLabel } from '../words/labels.js';
 import { slug } from '../slug.js';
-import type { ReportTable, TableMaker } from './table.js';
+import type { CombinationTableMaker } from './table.js';
 import { numbers, words } from './table.js';
 
 /** Factors that answer other questions, on variances and as their square root on errors. */
-export const factors: TableMaker = (results, combination) => {
-  const found = combination === null ? undefined : results.combinations[combination];
-  if (combination === null || found === undefined) return null;
+export const factors: CombinationTableMaker = (results, combination) => {
+  const found = results.combinations[combination]!;
   const rows = found.suites.flatMap(({ suite, factors: of }): Said[][] => {
     if (of === null) return [];
     const row = (question: Said, source: string, value: number | null): Said[] => [
@@ -36,9 +35,8 @@ export const factors: TableMaker = (results, combination) => {
 };
 
 /** How each derivative was made. */
-export const derivatives: TableMaker = (results, combination): ReportTable | null => {
-  const found = combination === null ? undefined : results.combinations[combination];
-  if (combination === null || found === undefined) return null;
+export const derivatives: CombinationTableMaker = (results, combination) => {
+  const found = results.combinations[combination]!;
   const runs = [...new Set(found.suites.flatMap((suite) => suite.runs))];
   return {
     id: `derivatives-${combination}`,

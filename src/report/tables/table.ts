@@ -20,8 +20,11 @@ export interface Column {
   readonly align: 'left' | 'right';
 }
 
-/** A table of the results, or of one combination; null where there is nothing to show. */
-export type TableMaker = (results: Results, combination: string | null) => ReportTable | null;
+/** A table of the results; null where there is nothing to show. */
+export type TableMaker = (results: Results) => ReportTable | null;
+
+/** A table of one combination. */
+export type CombinationTableMaker = (results: Results, combination: string) => ReportTable;
 
 export function words(heading: Said): Column {
   return { heading, align: 'left' };
@@ -32,9 +35,9 @@ export function numbers(heading: Said): Column {
 }
 
 /** The numbered table with its caption above. */
-export function tableFrame(table: ReportTable, numbering: Numbering): Frame {
+export function tableFrame(table: ReportTable, numbering: Numbering, fail: (what: string) => Error): Frame {
   const id = `table-${table.id}`;
-  const label = numbered(numbering, 'Table', id);
+  const label = numbered(numbering, 'Table', id, fail);
   const align: AlignType[] = table.columns.map((column) => column.align);
   const rows = [table.columns.map(({ heading }) => heading), ...table.rows];
   return {

@@ -8,7 +8,7 @@ import { methodsData, methodsFisher, methodsLead, methodsMissing, methodsPrecisi
 import { byline, colophon, provenanceLead } from './provenance.js';
 import { responseLead } from './responses.js';
 import { scaleLead } from './scale.js';
-import type { SentenceMaker } from './sentence-maker.js';
+import type { CombinationSentenceMaker, SentenceMaker } from './sentence-maker.js';
 
 export const sentenceMakers: Readonly<Record<string, SentenceMaker>> = {
   byline,
@@ -19,16 +19,20 @@ export const sentenceMakers: Readonly<Record<string, SentenceMaker>> = {
   degeneracies: degeneracyLead,
   errors: errorLead,
   flattery,
-  'gains-of': gainsOf,
   glance,
   improvement: improvementLead,
-  'methods-data': methodsData,
-  'methods-fisher': methodsFisher,
   methods: methodsLead,
-  'methods-missing': methodsMissing,
-  'methods-precision': methodsPrecision,
-  'methods-priors': methodsPriors,
   provenance: provenanceLead,
   responses: responseLead,
   scale: scaleLead,
+};
+
+/** Sentences that stand inside `:::each`. */
+export const combinationSentenceMakers: Readonly<Record<string, CombinationSentenceMaker>> = {
+  'gains-of': gainsOf,
+  'methods-data': methodsData,
+  'methods-fisher': methodsFisher,
+  'methods-missing': methodsMissing,
+  'methods-precision': methodsPrecision,
+  'methods-priors': methodsPriors,
 };

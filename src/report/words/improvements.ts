@@ -4,7 +4,7 @@ import type { Improvement, Results } from '../../results/schema.js';
 import { list, listed, paragraph, say } from '../markdown/nodes.js';
 import { sham } from '../tables/improvements.js';
 import { parameterLabel, targets } from './labels.js';
-import type { SentenceMaker } from './sentence-maker.js';
+import type { CombinationSentenceMaker, SentenceMaker } from './sentence-maker.js';
 import { tallyStatuses, targetGains } from './tally.js';
 import { prose } from './prose.js';
 import { correctedInWords, noNumber, raw } from './values.js';
@@ -22,8 +22,8 @@ export const improvementLead: SentenceMaker = (results) => {
 };
 
 /** What one combination adds to the baseline, a sentence for each target parameter. */
-export const gainsOf: SentenceMaker = (results, combination) => {
-  const gains = combination === null ? undefined : results.improvements[combination];
+export const gainsOf: CombinationSentenceMaker = (results, combination) => {
+  const gains = results.improvements[combination];
   if (gains === undefined) return [];
   const items = targets(results).flatMap((name) => {
     const gain = gains[name]?.marginalised;

@@ -4,13 +4,13 @@ import type { CombinationResult, Results } from '../../results/schema.js';
 import { cite, displayMath, inlineMath, list, listed, paragraph, say, text } from '../markdown/nodes.js';
 import { leastDerivatives } from '../tables/combinations.js';
 import { parameterLabel, probeLabel } from './labels.js';
-import type { SentenceMaker } from './sentence-maker.js';
+import type { CombinationSentenceMaker, SentenceMaker } from './sentence-maker.js';
 import { prose } from './prose.js';
 import { counted } from './values.js';
 
 /** What goes into the data vector of a combination, and what is left out. */
-export const methodsData: SentenceMaker = (results, name) => {
-  const found = combinationOf(results, name);
+export const methodsData: CombinationSentenceMaker = (results, name) => {
+  const found = results.combinations[name]!;
   const probes = listed(found.probes.map((probe) => probeLabel(results, probe)));
   const cuts = found.cuts.map((cut) => cutWords(results, cut));
   const silent = results.parameters.filter((one) => !found.parameters.includes(one.name)).map((one) => parameterLabel(results, one.name));
@@ -31,8 +31,8 @@ function cutWords(results: Results, { probe, coordinate, min, max, blocks }: Com
 }
 
 /** The precision matrix of each suite, with its numbers. */
-export const methodsPrecision: SentenceMaker = (results, name) => {
-  const found = combinationOf(results, name);
+export const methodsPrecision: CombinationSentenceMaker = (results, name) => {
+  const found = results.combinations[name]!;
   return found.suites.flatMap((part): RootContent[] => {
     const suite = { type: 'inlineCode' as const, value: part.suite };
     const entries = found.suites.length === 1 ? '' : `, ${String(part.entries)} entries`;
@@ -72,13 +72,13 @@ function volumeWords(scale: number): RootContent[] {
 }
 
 /** How the noise of the derivatives is taken out here. */
-export const methodsFisher: SentenceMaker = (results, name) => {
-  const found = combinationOf(results, name);
+export const methodsFisher: CombinationSentenceMaker = (results, name) => {
+  const found = results.combinations[name]!;
   const noisy = Object.values(found.derivativeRealisations).some((n) => n !== null);
   if (!noisy) {
     return [paragraph(text('No derivative comes with realisations of known number: there is no noise that could be measured and taken out.'))];
   }
-  const convergence = name === null ? undefined : results.convergence[name];
+  const convergence = results.convergence[name];
   const blocks = convergence?.realisations.map((n, i) => `${counted(convergence.blocks[i]!, 'block')} of ${Number.isInteger(n) ? count(n) : `about ${count(Math.round(n))}`}`) ?? [];
   const shown =
     convergence === undefined
@@ -92,8 +92,8 @@ export const methodsFisher: SentenceMaker = (results, name) => {
 };
 
 /** What is known from elsewhere. */
-export const methodsPriors: SentenceMaker = (results, name) => {
-  const found = combinationOf(results, name);
+export const methodsPriors: CombinationSentenceMaker = (results, name) => {
+  const found = results.combinations[name]!;
   const given = results.parameters.filter((one) => one.prior !== null && found.parameters.includes(one.name));
   const items = given.map((one) => {
     const formula = `1/\\sigma^2 = 1/${latexNumber(one.prior!)}^2`;
@@ -110,8 +110,8 @@ function latexNumber(value: number): string {
 }
 
 /** What the inputs do not allow to say. */
-export const methodsMissing: SentenceMaker = (results, name) => {
-  const { notAssessable } = combinationOf(results, name);
+export const methodsMissing: CombinationSentenceMaker = (results, name) => {
+  const { notAssessable } = results.combinations[name]!;
   if (notAssessable.length === 0) return [paragraph(text('Everything that this report looks at could be assessed.'))];
   return [paragraph(text('Not assessable:')), list(notAssessable.map((sentence) => [text(prose(sentence))]))];
 };
@@ -121,9 +121,3 @@ export const methodsLead: SentenceMaker = (results) => [
     ...say`The headline answers: what would the error be if the covariance and the derivatives were known? Each combination has a part of its own below, with its own numbers. Intervals cover 68.3 % unless they say otherwise; sham gains are medians of ${count(results.rules.shamDraws)} draws.`,
   ),
 ];
-
-function combinationOf(results: Results, name: string | null): CombinationResult {
-  const found = name === null ? undefined : results.combinations[name];
-  if (found === undefined) throw new Error('a methods sentence stands outside ":::each{of=combinations}"');
-  return found;
-}

@@ -1,5 +1,8 @@
 import type { RootContent } from 'mdast';
 import type { Results } from '../../results/schema.js';
 
-/** Words about the results, or about one combination. */
-export type SentenceMaker = (results: Results, combination: string | null) => readonly RootContent[];
+/** Words about the results. */
+export type SentenceMaker = (results: Results) => readonly RootContent[];
+
+/** Words about one combination. */
+export type CombinationSentenceMaker = (results: Results, combination: string) => readonly RootContent[];
