@@ -13,10 +13,11 @@ export function logTicks(domain: readonly [number, number], most: number): reado
     }
     return ticks;
   };
+  const decades = on([1]);
+  if (decades.length > most) return decades.filter((_, k) => k % Math.ceil(decades.length / most) === 0);
   const fitting = ladders.map(on).filter((ticks) => ticks.length <= most);
   const finest = fitting[fitting.length - 1];
-  if (finest !== undefined && finest.length >= 2) return finest;
-  return linearTicks(low, high, most);
+  return finest !== undefined && finest.length >= 3 ? finest : linearTicks(low, high, most);
 }
 
 /** Within less than a factor of two a logarithmic axis is nearly linear: round steps. */

@@ -4,6 +4,7 @@ import type { AtCut, Combined } from './combined.js';
 import { quantityOf, whole } from './combined.js';
 import type { Convergence } from './convergence.js';
 import { convergenceOf } from './convergence.js';
+import type { Measured } from './estimate.js';
 import { estimateOf } from './estimate.js';
 import { covarianceVariance } from './influence.js';
 import { jackknifeVariance } from './jackknife.js';
@@ -79,7 +80,7 @@ export function ratioOf(study: Study, of: Assessed, by: Assessed, parameter: num
   const missing = valueOf(right.corrected, r) === null ? by : of;
   return estimateOf(
     {
-      ...variances(r === null ? null : { at: right, q: r }, q === null ? null : { at: left, q }),
+      ...variances(q === null ? null : { at: left, q }, r === null ? null : { at: right, q: r }),
       assessable: of.combined.assessable && by.combined.assessable,
       logRaw: difference(valueOf(left.raw, q), valueOf(right.raw, r)),
       logCorrected: difference(valueOf(left.corrected, q), valueOf(right.corrected, r)),
@@ -117,12 +118,12 @@ export interface Quantity {
   readonly q: number;
 }
 
-/** Variances of a log error, or of the difference of two, over the suites that either rests on. */
+/** Variances of a log error, or of the difference of two, over the suites that either rests on, and its bias. */
 export function variances(
   of: Quantity | null,
   less: Quantity | null,
-): { readonly varianceDerivatives: number | null; readonly varianceCovariance: number | null } {
-  if (of === null) return { varianceDerivatives: null, varianceCovariance: null };
+): Pick<Measured, 'varianceDerivatives' | 'varianceCovariance' | 'bias'> {
+  if (of === null) return { varianceDerivatives: null, varianceCovariance: null, bias: 0 };
   const suites = new Set([...of.at.replicates.keys(), ...(less?.at.replicates.keys() ?? [])]);
   let derivatives = 0;
   let covariance = 0;
@@ -133,7 +134,15 @@ export function variances(
     derivatives += jackknifeVariance(first.replicates, first.quantity, second ?? null);
     covariance += covarianceVariance(first.noise, first.quantity, second ?? null);
   }
-  return { varianceDerivatives: derivatives, varianceCovariance: covariance };
+  const bias = biasOf(of) - (less === null ? 0 : biasOf(less));
+  return { varianceDerivatives: derivatives, varianceCovariance: covariance, bias };
+}
+
+/** Mean of the log error's deviation that the inverse of a noisy covariance leaves; 0 where the error does not exist. */
+function biasOf({ at, q }: Quantity): number {
+  let variance = 0;
+  for (const noise of at.noise.values()) variance += covarianceVariance(noise, q, null);
+  return (at.inversionBias[q] ?? variance) - variance;
 }
 
 function side(quantity: Quantity | null, suite: string) {

@@ -46,7 +46,7 @@ function buildPart(
   scan: Scan | null,
 ): Part {
   const runs = suite.runs.filter((run) => entries.some((entry) => entry.run.name === run.name));
-  refuseFewDerivatives(study, suite, runs);
+  refuseUnshared(combination, suite, runs);
   const covariance = suite.covarianceOf(runs);
   refuseFewFiducials(combination, covariance, entries);
   const picks = picksOf(entries, covariance);
@@ -71,6 +71,21 @@ function buildPart(
   );
 }
 
+/** Runs without common realisations have no covariance between them that anyone could measure. */
+function refuseUnshared(combination: Combination, suite: Suite, runs: readonly Run[]): void {
+  const shared = suite.sharedFiducials(runs);
+  if (shared === null || shared >= 2 || runs.length < 2) return;
+  throw new InputError([
+    {
+      what: 'runs of one suite that share no realisations',
+      where: runs[1]!.place(['fiducial', 'seeds']),
+      found: `${String(shared)} fiducial seeds in common between the runs ${runs.map(({ name }) => name).join(', ')} of combination ${combination.name}`,
+      expected: 'the same seeds in every run of a suite, or most of them',
+      remedy: 'check the seeds files, or give the runs suites of their own if they were measured on different simulations',
+    },
+  ]);
+}
+
 function volumeScale(combination: Combination, runs: readonly Run[]): number {
   if (combination.volume === null) return 1;
   const run = runs[0]!;
@@ -86,32 +101,6 @@ function volumeScale(combination: Combination, runs: readonly Run[]): number {
     ]);
   }
   return combination.volume / run.volume;
-}
-
-/** Leaving one out must leave two, or there is no noise to measure. */
-const fewestDerivatives = 3;
-
-function refuseFewDerivatives(study: Study, suite: Suite, runs: readonly Run[]): void {
-  const problems = runs.flatMap((run) =>
-    study.parameters.flatMap(({ name }): readonly Problem[] => {
-      const few = suite.derivatives
-        .get(run.name)!
-        .get(name)!
-        .strands.find((strand) => strand.keys.length < fewestDerivatives);
-      if (few === undefined) return [];
-      const missing = fewestDerivatives - few.keys.length;
-      return [
-        {
-          what: 'too few derivative realisations',
-          where: run.place(['derivatives', name]),
-          found: `${String(few.keys.length)} realisations`,
-          expected: `at least ${String(fewestDerivatives)}, and tens to hundreds for a number that can be trusted`,
-          remedy: `add at least ${String(missing)} more, or give the derivative as exact: if it has no noise`,
-        },
-      ];
-    }),
-  );
-  if (problems.length > 0) throw new InputError(problems);
 }
 
 function refuseFewFiducials(combination: Combination, covariance: FiducialCovariance, entries: readonly Entry[]): void {

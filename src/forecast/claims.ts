@@ -2,7 +2,7 @@ import type { ClaimResult, Estimate, Verdict } from '../results/schema.js';
 import type { Claim, ClaimTest, Study } from '../study/study.js';
 import type { Assessed } from './assess.js';
 import { errorOf, ratioOf } from './assess.js';
-import { z95OneSided } from './thresholds.js';
+import { z95OneSided, z95TwoSided } from './thresholds.js';
 
 /** The table that defines the verdicts; the report prints it. Source: methods, section 8. */
 export const verdictRules: readonly { readonly verdict: Verdict; readonly rule: string }[] = [
@@ -50,17 +50,23 @@ function testClaim(study: Study, claim: Claim, assessed: ReadonlyMap<string, Ass
 
 /**
  * One-sided tests at 95 % in the logarithm. A claim of a range is supported where both its ends pass, and contradicted where
- * either fails.
+ * either fails, at 97.5 % each, so that together they are wrong one time in twenty at most. A bias of known sign counts in full against the
+ * verdict that it favours, and never for one.
  */
-export function verdictOf(estimate: Estimate, test: ClaimTest): Verdict {
+export function verdictOf(estimate: Pick<Estimate, 'corrected' | 'parts' | 'status'>, test: ClaimTest): Verdict {
   if (estimate.status === 'not assessable') return 'not assessable';
-  const { corrected, relativeStandardError } = estimate;
-  if (corrected === null || relativeStandardError === null) return 'not settled';
+  const { corrected, parts } = estimate;
+  if (corrected === null || parts.derivatives === null || parts.covariance === null) return 'not settled';
   const log = Math.log(corrected);
-  const margin = z95OneSided * relativeStandardError;
-  const sides = sidesOf(test).map(({ direction, threshold }) => direction * (log - Math.log(threshold)));
-  if (sides.every((distance) => distance >= margin)) return 'supported';
-  if (sides.some((distance) => distance < -margin)) return 'contradicted';
+  const error = Math.hypot(parts.derivatives, parts.covariance);
+  const bias = parts.bias ?? 0;
+  const sides = sidesOf(test).map(({ direction, threshold }) => ({
+    distance: direction * (log - Math.log(threshold)),
+    flattery: direction * bias,
+  }));
+  const against = test.kind === 'between' ? z95TwoSided : z95OneSided;
+  if (sides.every(({ distance, flattery }) => distance >= z95OneSided * error + Math.max(0, flattery))) return 'supported';
+  if (sides.some(({ distance, flattery }) => distance < -against * error - Math.max(0, -flattery))) return 'contradicted';
   return estimate.status === 'unsettled' ? 'not settled' : 'too close to call';
 }
 

@@ -101,7 +101,7 @@ function correlationRows(solved: Solved | null): number[][] | null {
     data: data.map((value, k) => {
       const i = Math.floor(k / size);
       const j = k % size;
-      return i === j ? 1 : value / Math.sqrt(data[i * (size + 1)]! * data[j * (size + 1)]!);
+      return i === j ? 1 : value / Math.sqrt(data[i * (size + 1)]!) / Math.sqrt(data[j * (size + 1)]!);
     }),
   });
 }

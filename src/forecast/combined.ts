@@ -6,6 +6,7 @@ import type { PartFisher } from './fisher.js';
 import { partFisher, whitenedDerivatives } from './fisher.js';
 import type { CovarianceNoise, Gradients } from './influence.js';
 import { gaussianNoise, measuredNoise, precisionTimesDerivatives, project } from './influence.js';
+import { inversionBias } from './inversion-bias.js';
 import type { Replicates } from './jackknife.js';
 import type { Solved } from './log-errors.js';
 import { neighbourLogs, solve } from './log-errors.js';
@@ -22,6 +23,8 @@ export interface AtCut {
   /** By suite name. */
   readonly replicates: ReadonlyMap<string, Replicates>;
   readonly noise: ReadonlyMap<string, CovarianceNoise>;
+  /** By quantity: what the precision factor leaves in log sigma, before its variance is taken off. */
+  readonly inversionBias: readonly (number | null)[];
 }
 
 export interface Combined {
@@ -59,6 +62,7 @@ export function combine(study: Study, combination: Combination, parts: readonly 
     ...at,
     replicates: new Map(parts.map((part, k) => [part.suite.name, replicatesOf(part, fishers[k]![cut]!, at, active)])),
     noise: new Map(parts.map((part, k) => [part.suite.name, noises[k]![cut]!])),
+    inversionBias: biasAt(at, parts, fishers, cut, active),
   }));
   return { combination, parts, active, prior, cuts, assessable };
 }
@@ -118,6 +122,23 @@ function solveCut(
     raw: solve(add([1, raw], [1, prior])),
     corrected: corrected === null ? null : solve(add([1, corrected], [1, prior])),
   };
+}
+
+function biasAt(
+  at: SolvedCut,
+  parts: readonly Part[],
+  fishers: readonly (readonly PartFisher[])[],
+  cut: number,
+  active: readonly number[],
+): readonly (number | null)[] {
+  const terms = parts.flatMap(({ covariance: { realisations } }, k) => {
+    const { corrected, entries } = fishers[k]![cut]!;
+    return realisations === null || entries === 0
+      ? []
+      : [{ fisher: restricted(corrected, active), freedom: realisations - entries - 2 }];
+  });
+  const { fisher, inversion } = at.corrected ?? at.raw;
+  return inversionBias(fisher, inversion, terms);
 }
 
 function replicatesOf(part: Part, fisher: PartFisher, at: SolvedCut, active: readonly number[]): Replicates {

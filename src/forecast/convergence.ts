@@ -2,6 +2,7 @@ import { add } from '../linalg/small.js';
 import type { Combined } from './combined.js';
 import { restricted } from './combined.js';
 import { solve } from './log-errors.js';
+import type { Part } from './part.js';
 import type { Members } from './subset.js';
 import { countOf, subsetFisher } from './subset.js';
 
@@ -30,13 +31,15 @@ const divisions = [8, 4, 2, 1] as const;
 
 /**
  * Raw and corrected errors against the number of derivative realisations, from disjoint blocks (nested subsets would
- * hide the scatter): block k of m holds the realisations whose number leaves the remainder k. null without noise.
+ * hide the scatter). Realisations are dealt out in turn within each set that the same strands share, so that every strand has its
+ * share of every block. null without noise.
  */
 export function convergenceOf(combined: Combined): Convergence | null {
   const strands = combined.parts.flatMap((part) => part.strands);
   if (!combined.assessable || strands.length === 0) return null;
+  const turns = combined.parts.map(dealt);
   const levels = divisions
-    .map((division) => Array.from({ length: division }, (_, remainder) => blockLogs(combined, division, remainder)))
+    .map((division) => Array.from({ length: division }, (_, remainder) => blockLogs(combined, turns, division, remainder)))
     .flatMap((blocks, k) => {
       const whole = blocks.filter((block) => block !== null);
       return whole.length === blocks.length ? [{ blocks: whole, division: divisions[k]! }] : [];
@@ -50,12 +53,27 @@ export function convergenceOf(combined: Combined): Convergence | null {
   };
 }
 
-function blockLogs(combined: Combined, division: number, remainder: number): BlockLogs | null {
+/** Turn of each realisation of a part's suite: numbered through the sets of realisations that the same strands share. */
+function dealt(part: Part): Int32Array {
+  const count = part.suite.derivativeSeeds.size;
+  const sets = new Map<string, number[]>();
+  for (let s = 0; s < count; s += 1) {
+    const owners = part.strands.flatMap((strand, u) => (strand.rowOf[s]! < 0 ? [] : [u])).join(' ');
+    const set = sets.get(owners);
+    if (set === undefined) sets.set(owners, [s]);
+    else set.push(s);
+  }
+  const turns = new Int32Array(count);
+  [...sets.values()].flat().forEach((s, turn) => {
+    turns[s] = turn;
+  });
+  return turns;
+}
+
+function blockLogs(combined: Combined, turns: readonly Int32Array[], division: number, remainder: number): BlockLogs | null {
   const { active, prior } = combined;
-  const fishers = combined.parts.map((part) => {
-    const members: Members = Uint8Array.from({ length: part.suite.derivativeSeeds.size }, (_, s) =>
-      s % division === remainder ? 1 : 0,
-    );
+  const fishers = combined.parts.map((part, k) => {
+    const members: Members = Uint8Array.from(turns[k]!, (turn) => (turn % division === remainder ? 1 : 0));
     return part.strands.some((strand) => countOf(strand, members) < 2) ? null : subsetFisher(part, members);
   });
   const present = fishers.filter((fisher) => fisher !== null);

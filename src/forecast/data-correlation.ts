@@ -10,8 +10,9 @@ const mostCells = 64;
  * that fall into it, and no cell spans two blocks. null where fewer than three realisations are shared.
  */
 export function dataCorrelation(suite: Suite): DataCorrelation | null {
-  const { runs, covariance, realisations } = suite.covarianceOf(suite.runs);
-  if (realisations !== null && realisations < 3) return null;
+  const shared = suite.sharedFiducials(suite.runs);
+  if (shared !== null && shared < 3) return null;
+  const { runs, covariance } = suite.covarianceOf(suite.runs);
   const columns = runs.flatMap((run) => run.columns);
   const entriesPerCell = Math.ceil(columns.length / mostCells);
   const groups = groupsOf(columns, entriesPerCell);

@@ -33,8 +33,10 @@ export function derivativeTests(run: Run, derivative: RunDerivative, variance: F
   const places = placesOf(run, derivative, fiducialValue);
   if (places === null) return [];
   const response = meanOf(combination(places, weightsAt(places, fiducialValue, 1)));
+  const norm = normOf(response, variance);
+  if (!(norm > 0)) return [];
   const test = (kind: DerivativeTest['kind'], weights: Float64Array | null): readonly DerivativeTest[] =>
-    weights === null ? [] : [projected(kind, combination(places, weights), response, variance)];
+    weights === null ? [] : [projected(kind, combination(places, weights), response, variance, norm)];
   return [
     ...test('step size', stepWeights(places, fiducialValue)),
     ...test('one-sided', sidedWeights(places, fiducialValue)),
@@ -120,12 +122,24 @@ function meanOf({ data, rows, columns }: Matrix): Float64Array {
   return mean;
 }
 
-function projected(kind: DerivativeTest['kind'], delta: Matrix, response: Float64Array, variance: Float64Array): DerivativeTest {
+/** sum_j d_j^2/var_j over the entries that vary; 0 where nothing responds. */
+function normOf(response: Float64Array, variance: Float64Array): number {
+  return response.reduce((sum, value, i) => (variance[i]! > 0 ? sum + value ** 2 / variance[i]! : sum), 0);
+}
+
+function projected(
+  kind: DerivativeTest['kind'],
+  delta: Matrix,
+  response: Float64Array,
+  variance: Float64Array,
+  norm: number,
+): DerivativeTest {
   const { data, rows, columns } = delta;
-  const norm = response.reduce((sum, value, i) => sum + value ** 2 / variance[i]!, 0);
   const shares = Float64Array.from({ length: rows }, (_, row) => {
     let sum = 0;
-    for (let i = 0; i < columns; i += 1) sum += (response[i]! * data[row * columns + i]!) / variance[i]!;
+    for (let i = 0; i < columns; i += 1) {
+      if (variance[i]! > 0) sum += (response[i]! * data[row * columns + i]!) / variance[i]!;
+    }
     return sum / norm;
   });
   const mean = shares.reduce((sum, share) => sum + share, 0) / rows;

@@ -84,26 +84,36 @@ function fromNodes(ensemble: Ensemble, nodes: readonly Node[], fiducialValue: nu
   );
   const strands = nodes.map((node) => nodeRows(ensemble, nodes, node));
   const sources = nodes.map((node) => (node.realisations === 'fiducial' ? ensemble.fiducial : node.realisations));
-  const matched = strands.every((strand) => sameKeys(strand.keys, strands[0]!.keys));
+  // A node of weight zero, such as the middle of three even ones, is no part of the derivative and decides nothing.
+  const used = strands.map((_, j) => j).filter((j) => weights[j] !== 0);
+  const usedStrands = used.map((j) => strands[j]!);
+  const matched = usedStrands.every((strand) => sameKeys(strand.keys, usedStrands[0]!.keys));
   const common = commonKeys(strands.map((strand) => strand.keys));
+  const overlap = usedStrands.some((strand, k) => usedStrands.slice(k + 1).some((other) => commonKeys([strand.keys, other.keys]).length > 0));
   return {
     ...nothing,
     kind: 'nodes',
-    strands: matched ? [difference(strands, weights)] : strands.map((strand, j) => scaled(strand, weights[j]!)),
+    strands: matched
+      ? [difference(usedStrands, used.map((j) => weights[j]!))]
+      : used.map((j) => scaled(strands[j]!, weights[j]!)),
     nodes: nodes.map((node, j) => ({
       at: node.at,
       weight: weights[j]!,
       realisations: strands[j]!.keys.length,
       source: node.realisations === 'fiducial' ? 'fiducial' : node.realisations.source,
     })),
-    matching: matchingOf(matched, sources, common.length),
+    matching: matchingOf(
+      matched,
+      used.map((j) => sources[j]!),
+      overlap,
+    ),
     nodeRows: common.length >= 3 ? strands.map((strand) => reordered(strand, common)) : null,
   };
 }
 
-function matchingOf(matched: boolean, sources: readonly Realisations[], common: number): Matching {
+function matchingOf(matched: boolean, sources: readonly Realisations[], overlap: boolean): Matching {
   if (matched) return sources.every((source) => source.seeds === null) ? 'by index' : 'by seed';
-  return common > 0 ? 'partly matched' : 'unmatched';
+  return overlap ? 'partly matched' : 'unmatched';
 }
 
 /** Rows of a node; the fiducial stands in with the realisations that the other nodes have. */
@@ -116,7 +126,7 @@ function nodeRows(ensemble: Ensemble, nodes: readonly Node[], node: Node): Stran
   );
 }
 
-function difference(strands: readonly Strand[], weights: Float64Array): Strand {
+function difference(strands: readonly Strand[], weights: readonly number[]): Strand {
   const { keys } = strands[0]!;
   const aligned = strands.map((strand) => reordered(strand, keys));
   const { rows, columns } = aligned[0]!.rows;

@@ -17,10 +17,13 @@ export function entryShape(part: Part): EntryShape | null {
   if (rows === null || mean === null) return null;
   const { source } = rows;
   const size = part.picks.length;
+  // In units of the standard deviation: the fourth power of data around 1e-100 would be lost.
+  const { data, columns } = part.covariance.covariance;
+  const deviation = Float64Array.from(part.picks, (column) => Math.sqrt(data[column * (columns + 1)]!));
   const sums = [new Float64Array(size), new Float64Array(size), new Float64Array(size)] as const;
   for (let start = 0; start < source.rows; start += 256) {
     const count = Math.min(256, source.rows - start);
-    addMoments(source.read(start, count), count, source.columns, part.picks, mean, sums);
+    addMoments(source.read(start, count), count, source.columns, part.picks, mean, deviation, sums);
   }
   const count = source.rows;
   const [second, third, fourth] = sums;
@@ -37,12 +40,13 @@ function addMoments(
   columns: number,
   picks: Int32Array,
   mean: Float64Array,
+  deviation: Float64Array,
   [second, third, fourth]: readonly [Float64Array, Float64Array, Float64Array],
 ): void {
   for (let k = 0; k < count; k += 1) {
     for (let i = 0; i < picks.length; i += 1) {
       const column = picks[i]!;
-      const delta = block[k * columns + column]! - mean[column]!;
+      const delta = (block[k * columns + column]! - mean[column]!) / deviation[i]!;
       const square = delta * delta;
       second[i] = second[i]! + square;
       third[i] = third[i]! + square * delta;

@@ -9,6 +9,8 @@ export interface Measured {
   readonly logCorrected: number | null;
   readonly varianceDerivatives: number | null;
   readonly varianceCovariance: number | null;
+  /** Mean deviation of the log that the inverse of a noisy covariance leaves (inversion-bias). */
+  readonly bias: number;
   readonly noisy: boolean;
   readonly logLimit: number | null;
   readonly logSplit: number | null;
@@ -17,14 +19,14 @@ export interface Measured {
 }
 
 /**
- * The estimate with its standard error, intervals and status. Total = derivative part and covariance part in quadrature:
- * the two come from different realisations, or nearly so, and neither alone covers.
+ * The estimate with its standard error, intervals and status. Total = derivative part, covariance part and what the precision factor
+ * leaves in an error, in quadrature: the first two come from different realisations, or nearly so, and none alone covers.
  * Intervals are exp(log corrected -+ z SE).
  */
 export function estimateOf(measured: Measured, tolerance: number): Estimate {
   const { logCorrected, logRaw, varianceDerivatives, varianceCovariance } = measured;
   const known = logCorrected !== null && varianceDerivatives !== null && varianceCovariance !== null;
-  const standardError = known ? Math.sqrt(varianceDerivatives + varianceCovariance) : null;
+  const standardError = known ? Math.sqrt(varianceDerivatives + varianceCovariance + measured.bias ** 2) : null;
   const views = measured.noisy
     ? [
         { name: 'limit of the fitted curve', log: measured.logLimit },
@@ -41,6 +43,7 @@ export function estimateOf(measured: Measured, tolerance: number): Estimate {
     parts: {
       derivatives: known ? Math.sqrt(varianceDerivatives) : null,
       covariance: known ? Math.sqrt(varianceCovariance) : null,
+      bias: known ? measured.bias : null,
     },
     interval: intervalOf(logCorrected, standardError, z68),
     interval95: intervalOf(logCorrected, standardError, z95TwoSided),

@@ -19,6 +19,7 @@ import { statusRules } from './status.js';
 import type { Suite } from './suite.js';
 import { suitesOf } from './suite.js';
 import { ellipseDeltaChiSquare } from './thresholds.js';
+import { refuseTooFew } from './too-few.js';
 import { derivativeResult, vectorResults } from './vectors.js';
 
 /**
@@ -28,6 +29,7 @@ import { derivativeResult, vectorResults } from './vectors.js';
 export function forecast(study: Study, generator: Results['generator']): Results {
   const scan = scanOf(study);
   const suites = suitesOf(study);
+  refuseTooFew(study, suites);
   const combined = study.combinations.map((combination) =>
     combine(study, combination, buildParts(study, combination, suites, scan)),
   );

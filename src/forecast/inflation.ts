@@ -23,11 +23,11 @@ export interface InflationFactors {
  * @param realisations N_s
  * @param entries D
  * @param parameters p
- * @returns null where N_s <= D + 4, for which A and B do not exist
+ * @returns null where N_s <= D + 4, for which A and B do not exist, or D < p, for which there is no such analysis
  */
 export function inflationFactors(realisations: number, entries: number, parameters: number): InflationFactors | null {
   const gap = realisations - entries;
-  if (gap <= 4) return null;
+  if (gap <= 4 || entries < parameters) return null;
   const a = 2 / ((gap - 1) * (gap - 4));
   const b = (gap - 2) / ((gap - 1) * (gap - 4));
   const scatter = 1 + b * (entries - parameters);

@@ -86,7 +86,7 @@ function projectRow(projection: Matrix, centred: Float64Array, target: Float64Ar
  * h ((g . u_i)^2 - mean)/(2 (F^-1)_aa).
  *
  * Departure from the source: the first-order influence does not know that S^-1 spreads more than S, and gives a
- * relative error 1/sqrt(2 (N_s - 1)) for Gaussian data whatever D. It is therefore scaled by sqrt((N_s - 1)/nu), which
+ * relative error 1/sqrt(2 N_s) for Gaussian data whatever D. It is therefore scaled by sqrt(N_s/nu), which
  * makes it the Wishart law's 1/sqrt(2 nu) for Gaussian data, and keeps the data's own kurtosis where they are not.
  * Measured in test/calibration.
  * Source: Efron 1982, The Jackknife, the Bootstrap and Other Resampling Plans, chapter 6 (from memory).
@@ -104,7 +104,7 @@ export function measuredNoise(
   const values = new Float64Array(part.suite.fiducialSeeds.size * quantities);
   for (let q = 0; q < quantities; q += 1) {
     const free = q % 2 === 0 ? gradients.free : 1;
-    const spread = Math.sqrt((realisations - 1) / wishartDegrees(realisations, entries, free));
+    const spread = Math.sqrt(realisations / wishartDegrees(realisations, entries, free));
     const factor = (scale * spread * gradients.coefficients[q]!) / realisations;
     const squares = squaredProjections(u, gradients.rows, q, realisations);
     const mean = squares.reduce((sum, value) => sum + value, 0) / realisations;
@@ -142,7 +142,7 @@ export function gaussianNoise(
   for (let q = 0; q < quantities; q += 1) {
     const free = q % 2 === 0 ? gradients.free : 1;
     coefficients[q] =
-      scale * gradients.coefficients[q]! * Math.sqrt((realisations - 1) / wishartDegrees(realisations, entries, free));
+      scale * gradients.coefficients[q]! * Math.sqrt(realisations / wishartDegrees(realisations, entries, free));
     for (let a = 0; a < parameters; a += 1) {
       const weight = gradients.rows.data[q * parameters + a]!;
       for (let j = 0; j < projection.columns; j += 1) {

@@ -84,7 +84,9 @@ export function makePart(
       if (derivative.exact !== null) placeExact(plainExact, parameter, base.entries, run, derivative.exact);
     }
     for (const piece of pieces(base.suite, base.runs, name)) {
-      strands.push(partStrand(base.suite, base.entries, base.factor, parameter, piece));
+      const strand = partStrand(base.suite, base.entries, base.factor, parameter, piece);
+      // Rows of nothing but zeros are no response and have no noise, as an exact derivative of zeros has none.
+      if (strand.plain.data.some((value) => value !== 0) || strand.plainMean.some((value) => value !== 0)) strands.push(strand);
     }
   });
   const exact = { ...plainExact, data: Float64Array.from(plainExact.data) };

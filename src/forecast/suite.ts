@@ -22,6 +22,8 @@ export interface Suite {
   readonly fiducialSeeds: ReadonlyMap<Key, number>;
   /** Covariance over all entries of the given runs, computed once for each set of runs that differs in realisations. */
   readonly covarianceOf: (runs: readonly Run[]) => FiducialCovariance;
+  /** How many fiducial realisations some runs have in common; null for moments. */
+  readonly sharedFiducials: (runs: readonly Run[]) => number | null;
 }
 
 /** Covariance of the entries of some runs side by side, and the rows it came from. */
@@ -58,6 +60,7 @@ function makeSuite(study: Study, name: string): Suite {
     derivativeSeeds: numbered(strands.map((strand) => strand.keys)),
     fiducialSeeds,
     covarianceOf: remembering(runs, fiducialSeeds),
+    sharedFiducials: (chosen) => (chosen.every((run) => run.data.kind === 'ensemble') ? sharedKeys(chosen).length : null),
   };
 }
 

@@ -46,13 +46,13 @@ export function eigen(matrix: Small): { readonly values: Float64Array; readonly 
   return { values: Float64Array.from(order, ({ value }) => value), vectors: { data: vectors, size } };
 }
 
-/** The matrix with rows and columns divided by the roots of a positive diagonal; null where an element is not positive. */
+/** The matrix with rows and columns divided by the roots of a positive diagonal; null where an element is not positive or not finite. */
 export function unitDiagonal(matrix: Small): { readonly scaled: Small; readonly scale: Float64Array } | null {
   const { size, data } = matrix;
   const scale = new Float64Array(size);
   for (let i = 0; i < size; i += 1) {
     const element = data[i * size + i]!;
-    if (!(element > 0)) return null;
+    if (!(element > 0 && element < Infinity)) return null;
     scale[i] = Math.sqrt(element);
   }
   return { scaled: { data: data.map((value, k) => value / (scale[Math.floor(k / size)]! * scale[k % size]!)), size }, scale };

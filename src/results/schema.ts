@@ -13,6 +13,12 @@ export const statusSchema = z.enum(['settled', 'correctable', 'unsettled', 'unde
 export const verdictSchema = z.enum(['supported', 'contradicted', 'too close to call', 'not settled', 'not assessable']);
 const levelSchema = z.enum(['ok', 'note', 'warning', 'error']);
 
+/**
+ * Parts of the relative standard error: the noise of the derivatives, the noise of the covariance, and the bias that the precision
+ * factor leaves in the logarithm of an error (signed; positive says that the value comes out too large).
+ */
+const parts = z.object({ derivatives: optionalNumber, covariance: optionalNumber, bias: optionalNumber });
+
 /** An estimate of an error or of a ratio of errors. Intervals are exp(log corrected -+ z SE). */
 const estimateShape = {
   /** From the plug-in Fisher matrix. */
@@ -21,9 +27,9 @@ const estimateShape = {
   corrected: optionalNumber,
   /** corrected times relativeStandardError: same unit as corrected. */
   standardError: optionalNumber,
-  /** Standard error of the natural logarithm: both parts in quadrature. */
+  /** Standard error of the natural logarithm: all parts in quadrature. */
   relativeStandardError: optionalNumber,
-  parts: z.object({ derivatives: optionalNumber, covariance: optionalNumber }),
+  parts,
   /** 68.3 %. */
   interval,
   /** 95 %. */
@@ -171,7 +177,7 @@ const claim = z.object({
   raw: optionalNumber,
   estimate: optionalNumber,
   relativeStandardError: optionalNumber,
-  parts: z.object({ derivatives: optionalNumber, covariance: optionalNumber }),
+  parts,
   interval,
   interval95: interval,
   status: statusSchema,

@@ -26,6 +26,16 @@ export function orderParameters(study: StudyFile, yaml: YamlFile, reading: Readi
     }),
   );
   reportDuplicates('a parameter', all.map(({ name }) => name), (i) => yaml.place(['parameters', i, 'name']), reading);
+  all.forEach(({ name, prior }, i) => {
+    if (prior === null || Number.isFinite(1 / prior ** 2)) return;
+    reading.report({
+      what: 'a prior too narrow for double precision',
+      where: yaml.place(['parameters', i, 'prior']),
+      found: `${String(prior)} for ${name}`,
+      expected: 'a prior whose inverse square is a number',
+      remedy: 'check its unit; a parameter that is known exactly is best left out',
+    });
+  });
   const indices = all.map((_, i) => i);
   const positions = [...indices.filter((i) => all[i]!.role === 'target'), ...indices.filter((i) => all[i]!.role === 'nuisance')];
   return { parameters: positions.map((i) => all[i]!), positions };

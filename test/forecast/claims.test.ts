@@ -20,6 +20,7 @@ function estimate(value: number, standardError: number, changes: Partial<Measure
     logCorrected: log,
     varianceDerivatives: standardError ** 2,
     varianceCovariance: 0,
+    bias: 0,
     noisy: false,
     logLimit: null,
     logSplit: null,
@@ -69,6 +70,16 @@ describe('a verdict', () => {
     expect(verdictOf(precise, atLeast(2 * edge * (1 + 1e-12)))).toBe('contradicted');
     expect(verdictOf(precise, atMost(2 * edge * (1 + 1e-12)))).toBe('supported');
     expect(verdictOf(precise, between(2 / edge / 1.001, 2 * edge * 1.001))).toBe('supported');
+  });
+
+  it('is not swayed by a bias that favours it, and never helped by one', () => {
+    const flattered = estimate(2, 0.02, { bias: 0.05 });
+    const edge = Math.exp(z95OneSided * 0.02 + 0.05);
+    expect(verdictOf(flattered, atLeast((2 / edge) * (1 - 1e-12)))).toBe('supported');
+    expect(verdictOf(flattered, atLeast((2 / edge) * (1 + 1e-12)))).not.toBe('supported');
+    const modest = estimate(2, 0.02, { bias: -0.05 });
+    expect(verdictOf(modest, atLeast((2 / Math.exp(z95OneSided * 0.02)) * (1 + 1e-12)))).not.toBe('supported');
+    expect(verdictOf(modest, atLeast(2 * Math.exp(z95OneSided * 0.02) * (1 + 1e-12)))).not.toBe('contradicted');
   });
 
   it('of a value known exactly holds at the threshold itself', () => {

@@ -9,6 +9,7 @@ const measured: Measured = {
   logCorrected: Math.log(2),
   varianceDerivatives: 0.03 ** 2,
   varianceCovariance: 0.04 ** 2,
+  bias: 0,
   noisy: true,
   logLimit: Math.log(2.05),
   logSplit: Math.log(2.1),
@@ -32,11 +33,19 @@ describe('an estimate', () => {
     expect(estimate.derivativeRealisationsNeeded).toBeNull();
   });
 
+  it('counts a bias of known size as a third part, whatever its sign', () => {
+    for (const bias of [0.12, -0.12]) {
+      const estimate = estimateOf({ ...measured, bias }, 0.25);
+      expect(estimate.relativeStandardError).toBeCloseTo(0.13, 14);
+      expect(estimate.parts.bias).toBe(bias);
+    }
+  });
+
   it('without noise has one view only: its value', () => {
     const estimate = estimateOf({ ...measured, noisy: false, logLimit: null, logSplit: null, varianceDerivatives: 0 }, 0.25);
     expect(estimate.limit).toBe(estimate.corrected);
     expect(estimate.split).toBe(estimate.corrected);
-    expect(estimate.parts).toEqual({ derivatives: 0, covariance: expect.closeTo(0.04, 14) as number });
+    expect(estimate.parts).toEqual({ derivatives: 0, covariance: expect.closeTo(0.04, 14) as number, bias: 0 });
     expect(estimate.status).toBe('settled');
   });
 
@@ -51,7 +60,7 @@ describe('an estimate', () => {
       corrected: null,
       standardError: null,
       relativeStandardError: null,
-      parts: { derivatives: null, covariance: null },
+      parts: { derivatives: null, covariance: null, bias: null },
       interval: null,
       interval95: null,
       limit: expect.closeTo(2.05, 14) as number,

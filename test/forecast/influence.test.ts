@@ -95,7 +95,7 @@ describe('the influence of a realisation', () => {
       const fisher = response.mmul(inverse(scatter)).mmul(response.transpose());
       return Math.log(inverse(fisher).get(0, 0)) / 2;
     };
-    const spread = Math.sqrt((count - 1) / (count - 1 - size + parameters));
+    const spread = Math.sqrt(count / (count - 1 - size + parameters));
     for (const i of [0, 7, 33]) {
       const step = 1e-5;
       const slope = (logSigma(i, step) - logSigma(i, -step)) / (2 * step);

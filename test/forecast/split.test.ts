@@ -87,8 +87,7 @@ describe('statuses that hang on the split estimate', () => {
     expect(statusIn(study)).toBe('settled');
   });
 
-  // OPEN: geometricMean needs a positive-definite raw matrix without priors, so that a nuisance parameter that has only a prior leaves no split.
-  it.fails('stay settled beside a nuisance parameter that only its prior holds', () => {
+  it('stay settled beside a nuisance parameter that only its prior holds', () => {
     const run = study.runs[0]!;
     if (run.data.kind === 'moments') throw new Error('the study has realisations');
     const insensitive = { ...run, data: { ...run.data, derivatives: { ...run.data.derivatives, nu: { kind: 'insensitive' as const } } } };
@@ -96,8 +95,7 @@ describe('statuses that hang on the split estimate', () => {
     expect(statusIn({ ...study, parameters, runs: [insensitive] })).toBe('settled');
   });
 
-  // OPEN: each suite's compression inverts a p x p matrix that has rank D; a suite with fewer entries than parameters leaves no split.
-  it.fails('stay settled beside a second suite with fewer entries than parameters', () => {
+  it('stay settled beside a second suite with fewer entries than parameters', () => {
     const rows = (seed: number) => realisations(normalRows(400, 1, seed).map((value) => 0.5 + 0.1 * value), 1);
     const second = ensembleRun('far', columnsOf('far', 1), realisations(normalRows(2000, 1, 9), 1), {
       p0: { kind: 'per realisation', realisations: rows(10) },

@@ -1,9 +1,12 @@
 import type { CheckResult } from '../../results/schema.js';
 import type { Check, CheckInput } from './check.js';
+import { beyondPrior } from './beyond-prior.js';
 import { fiducialCount } from './fiducial-count.js';
 import { matching } from './matching.js';
+import { nearlyDependent } from './nearly-dependent.js';
 import { oneSided } from './one-sided.js';
 import { repeatedRealisations } from './repeated-realisations.js';
+import { sharedDerivatives } from './shared-derivatives.js';
 import { sharedFiducials } from './shared-fiducials.js';
 import { silentParameters } from './silent-parameters.js';
 
@@ -11,9 +14,12 @@ const checks: readonly Check[] = [
   fiducialCount,
   sharedFiducials,
   repeatedRealisations,
+  nearlyDependent,
   matching,
+  sharedDerivatives,
   oneSided,
   silentParameters,
+  beyondPrior,
 ];
 
 /** Every check, in the order of the report. */

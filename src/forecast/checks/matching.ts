@@ -35,7 +35,7 @@ function describe(run: Run, parameter: string, derivative: RunDerivative): reado
         {
           id,
           level: 'warning',
-          message: `The seed lists of the nodes overlap in part: each node is averaged over its own realisations, and the noise they share is accounted for.${evidence}`,
+          message: `The nodes do not all have the same seeds, but some are shared: each node is averaged over its own realisations, and the noise they share is accounted for.`,
           where,
         },
       ];

@@ -14,7 +14,7 @@ export const oneSided: Check = ({ study, suites }) =>
           {
             id: `one-sided-${run.name}-${name}`,
             level: 'note',
-            message: `The nodes (${places}) lie on one side of the fiducial value ${String(fiducial)}: with ${String(nodes.length)} nodes the truncation error is of order ${String(nodes.length - 1)} in the step, where a central scheme gains one order.`,
+            message: `The nodes (${places}) lie on one side of the fiducial value ${String(fiducial)}: with ${String(nodes.length)} nodes the truncation error is of order ${String(nodes.length - 1)} in the step, and nothing on the other side can check it.`,
             where: `run ${run.name}, derivatives.${name}`,
           } as const,
         ];
