@@ -1,7 +1,7 @@
 /** Every threshold of a judgement, with its source. */
 
 /** Normal quantile of 97.5 %: two-sided 95 %. Abramowitz & Stegun 1964, table 26.5 (from memory); distributions.json agrees. */
-export const z95TwoSided = 1.959963984540054;
+export const z95TwoSided = 1.95996398454005424;
 
 /** Normal quantile of 95 %: a one-sided test at 95 %. Same source. */
 export const z95OneSided = 1.644853626951472714;
