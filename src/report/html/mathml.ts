@@ -25,11 +25,19 @@ export function mathMl(tex: string, display: boolean): Element | null {
 
 function convert(node: MathTree): ElementContent[] {
   if (node.text !== undefined) return [{ type: 'text', value: node.text }];
-  const children = (node.children ?? []).flatMap(convert);
+  const children = (node.children ?? []).flatMap(convert).filter((child) => !isEmptySpace(child));
   // Anything else gives its content only.
   if (!elements.has(node.type)) return children;
   const kept = Object.entries(node.attributes ?? {}).filter(([name, value]) => attributes.has(name) && isPlain(value));
+  const [only] = children;
+  // A row of one is that one: half the size of a page with many symbols.
+  if (node.type === 'mrow' && kept.length === 0 && children.length === 1 && only?.type === 'element') return [only];
   return [{ type: 'element', tagName: node.type, properties: Object.fromEntries(kept.map(([name, value]) => [name, String(value)])), children }];
+}
+
+/** The converter puts spaces of no width into rows, for browsers that slant a lone letter: `mathvariant` says it already. */
+function isEmptySpace(node: ElementContent): boolean {
+  return node.type === 'element' && node.tagName === 'mspace' && Object.keys(node.properties).length === 0;
 }
 
 function isPlain(value: unknown): boolean {

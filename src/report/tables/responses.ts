@@ -15,9 +15,9 @@ export const responses: TableMaker = (results) => ({
     numbers('Entries'),
     ...results.parameters.map(({ name }) => numbers(parameterLabel(results, name))),
   ],
-  rows: blocksOf(results).map(({ probe, vector }) => [
+  rows: blocksOf(results).map(({ probe, block, vector }) => [
     probeLabel(results, probe),
-    blockLabel(vector.label),
+    vector.label === '' ? { type: 'inlineCode' as const, value: block } : blockLabel(vector.label),
     vector.coordinate === null ? 'none' : withUnit(vector.coordinate, vector.unit),
     String(vector.values.length),
     ...results.parameters.map(({ name }) => clearOf(results, vector, name)),
