@@ -46,7 +46,7 @@ function studyFolder({ name, noiseVariance, rows }: Regression): string {
 describe('marginalised errors are the certified standard deviations', () => {
   it.each(sets)('$name, $what', async (set) => {
     const study = await loadStudy(studyFolder(set));
-    const { errors, condition } = forecast(study, { name: 'test', version: '0' }).combinations['fit']!;
+    const { errors, condition } = forecast(study, { name: 'test', version: '0' }).combinations.fit!;
     const scaled = condition.corrected!;
     if (set.condition !== null) expect(scaled / set.condition).toBeCloseTo(1, 1);
     set.standardDeviations.forEach((certified, k) => {
@@ -64,9 +64,9 @@ describe('marginalised errors are the certified standard deviations', () => {
     // Powers of x up to 12 on 0..12: the scaled condition is near 1e15.
     const rows = Array.from({ length: 13 }, (_, x) => Array.from({ length: 13 }, (_unused, k) => (x + 1) ** k));
     const set = { name: 'Powers', what: '', noiseVariance: 1, rows, standardDeviations: [], condition: null };
-    const { errors } = forecast(await loadStudy(studyFolder(set)), { name: 'test', version: '0' }).combinations['fit']!;
-    expect(errors['b3']!.marginalised).toMatchObject({ corrected: null, status: 'undetermined' });
-    expect(errors['b3']!.marginalised.why).toContain('condition');
-    expect(errors['b3']!.fixed.status).toBe('settled');
+    const { errors } = forecast(await loadStudy(studyFolder(set)), { name: 'test', version: '0' }).combinations.fit!;
+    expect(errors.b3!.marginalised).toMatchObject({ corrected: null, status: 'undetermined' });
+    expect(errors.b3!.marginalised.why).toContain('condition');
+    expect(errors.b3!.fixed.status).toBe('settled');
   });
 });
