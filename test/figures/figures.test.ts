@@ -84,7 +84,7 @@ describe('at the extremes', () => {
 
   it('says in words what cannot be told', () => {
     const noisy = drawnResults({ parameters: 3, added: 2, noise: 30, derivatives: 6 });
-    const [gains] = figureMakers['gains']!(noisy, drawing);
+    const [gains] = figureMakers.gains!(noisy, drawing);
     expect(gains?.standalone).toContain('cannot tell');
     expect(gains?.alternative).toContain('cannot tell');
   });
