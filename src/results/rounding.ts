@@ -10,7 +10,7 @@ const uncertaintyDigits = 2;
 const mostDigits = 5;
 
 /** Digits of a number that comes without an uncertainty. */
-export const plainDigits = 3;
+const plainDigits = 3;
 
 /** U+202F, a thin space that does not break. */
 export const thinSpace = '\u202f';
@@ -107,6 +107,10 @@ function grouped(text: string): string {
 const superscripts = ['⁰', '¹', '²', '³', '⁴', '⁵', '⁶', '⁷', '⁸', '⁹'];
 
 function powerOfTen(exponent: number): string {
-  const digits = String(Math.abs(exponent)).replace(/\d/g, (digit) => superscripts[Number(digit)]!);
-  return `${thinSpace}×${thinSpace}10${exponent < 0 ? '⁻' : ''}${digits}`;
+  return `${thinSpace}×${thinSpace}10${superscript(String(exponent))}`;
+}
+
+/** A whole number, raised: "-2" is "⁻²". */
+export function superscript(power: string): string {
+  return power.replace(/[-\d]/g, (sign) => (sign === '-' ? '⁻' : superscripts[Number(sign)]!));
 }

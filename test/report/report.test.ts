@@ -38,7 +38,7 @@ function find<T extends Nodes['type']>(tree: Root, type: T): Extract<Nodes, { ty
 /** Formulae and marks of sources as nothing, since one side has TeX and the other MathML. */
 function withoutFormulae(html: string): Document {
   const { document } = new JSDOM(html).window;
-  for (const element of document.querySelectorAll('math, sup')) element.remove();
+  for (const element of document.querySelectorAll('math, sup, .spoken')) element.remove();
   return document;
 }
 
@@ -95,6 +95,7 @@ describe('a report', () => {
   it('gives every heading of a table its scope, and every row its heading', () => {
     expect(document.querySelectorAll('th:not([scope])')).toHaveLength(0);
     for (const row of document.querySelectorAll('figure.table tbody tr')) expect(row.children[0]!.getAttribute('scope')).toBe('row');
+    for (const heading of document.querySelectorAll('th')) expect(heading.textContent.trim()).not.toBe('');
     for (const region of document.querySelectorAll('.scroll')) expect(region.getAttribute('tabindex')).toBe('0');
   });
 

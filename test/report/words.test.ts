@@ -103,6 +103,19 @@ describe('the verdict on a claim', () => {
     expect(sentence('claims', withClaim(change))).toBe(words);
   });
 
+  it('comes with what would decide it, where the budget knows', () => {
+    const withBudget = (budget: Partial<NonNullable<Results['budget']>[number]>): string => {
+      const results = withClaim({ verdict: 'too close to call' });
+      const blank = { against: 'base', now: 0.1, goal: 0.05, reached: false, derivatives: null, fiducials: null, both: null, raw: null };
+      results.budget = [{ parameter: 'p0', combination: 'joint', claim: results.claims[0]!.id, ...blank, ...budget }];
+      return sentence('claims', results);
+    };
+    expect(withBudget({ derivatives: 715 })).toContain('Some 720 derivative realisations would decide it, if the value stays.');
+    expect(withBudget({ fiducials: 2345 })).toContain('Some 2300 fiducial realisations would decide it, if the value stays.');
+    expect(withBudget({ both: { derivatives: 15846, fiducials: 21671 } })).toContain('Some 16 000 derivative and 22 000 fiducial realisations would decide it');
+    expect(withBudget({})).toMatch(/which side it is on\.$/);
+  });
+
   it('is counted in the first line, whatever there is', () => {
     expect(sentence('glance', withClaim({ verdict: 'supported' }))).toBe('**Of one claim, 1 is supported, once the noise in the derivatives is taken out.**');
     const two = changedResults((results) => {
@@ -188,6 +201,18 @@ describe('methods of a combination', () => {
     expect(about('methods-data', results)).toContain('- Of added is kept: x at least 2 and the blocks only.');
     expect(about('methods-priors', results)).toContain('`p0`: $1/\\sigma^2 = 1/(1 \\times 10^{-9})^2$');
     expect(about('methods-missing', results)).toBe('Not assessable:\n\n- The noise of run a is not known.');
+  });
+
+  it('say whose noise is taken out, and whose cannot be', () => {
+    expect(about('methods-fisher', smallResults())).toContain('Derivatives rest on $N_\\mathrm{d} = 60$ realisations or more; their noise is measured and taken out');
+    const exact = changedResults((results) => {
+      for (const derivative of Object.values(results.runs.run!.derivatives)) derivative.kind = 'exact';
+    });
+    expect(about('methods-fisher', exact)).toBe('Every derivative is exact: there is no noise to take out, and raw and corrected values are the same.');
+    const without = changedResults((results) => {
+      for (const { marginalised } of Object.values(results.combinations.joint!.errors)) marginalised.status = 'not assessable';
+    });
+    expect(about('methods-fisher', without)).toContain('cannot be measured: it is still in the raw numbers.');
   });
 
   it('say so where the covariance is given', () => {

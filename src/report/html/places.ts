@@ -2,7 +2,7 @@ import type { Element, ElementContent, Nodes, Parents, Root } from 'hast';
 import { visit } from 'unist-util-visit';
 import { mathMl } from './mathml.js';
 
-export function classesOf(node: Element): readonly string[] {
+function classesOf(node: Element): readonly string[] {
   const { className } = node.properties;
   return Array.isArray(className) ? className.map(String) : [];
 }
@@ -82,7 +82,16 @@ function scopeRow(row: Element, headed: boolean): void {
     if (!column && headed && i === 0) cell.tagName = 'th';
     const scope = cell.tagName === 'th' ? { scope: column ? 'col' : 'row' } : {};
     cell.properties = { ...rest, ...scope, ...(right ? { className: ['number'] } : {}) };
+    if (cell.tagName === 'th') speak(cell);
   });
+}
+
+/** Not every reader aloud knows MathML in a heading: there the letters of a formula are said, and the formula is shown. */
+function speak(heading: Element): void {
+  const [only, ...others] = heading.children;
+  if (only?.type !== 'element' || only.tagName !== 'math' || others.length > 0) return;
+  only.properties = { ...only.properties, ariaHidden: 'true' };
+  heading.children.push(element('span', { className: ['spoken'] }, [{ type: 'text', value: textOf(only) }]));
 }
 
 function replace(parent: Parents, index: number, node: ElementContent): void {

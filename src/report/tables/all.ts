@@ -1,3 +1,4 @@
+import { budget } from './budget.js';
 import { checks } from './checks.js';
 import { claims } from './claims.js';
 import { combinations } from './combinations.js';
@@ -12,6 +13,7 @@ import type { CombinationTableMaker, TableMaker } from './table.js';
 import { gainViews, statuses, verdicts, views } from './views.js';
 
 export const tableMakers: Readonly<Record<string, TableMaker>> = {
+  budget,
   checks,
   claims,
   combinations,

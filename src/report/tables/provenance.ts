@@ -1,6 +1,7 @@
 import { asGiven, count } from '../../results/rounding.js';
 import type { Said } from '../markdown/nodes.js';
-import { listed, say } from '../markdown/nodes.js';
+import { say } from '../markdown/nodes.js';
+import { unitAfter } from '../words/labels.js';
 import type { TableMaker } from './table.js';
 import { numbers, words } from './table.js';
 
@@ -27,7 +28,7 @@ export const runs: TableMaker = (results) => ({
     run.kind,
     count(run.entries),
     run.fiducialRealisations === null ? 'not known' : count(run.fiducialRealisations),
-    run.volume === null ? 'not given' : `${asGiven(run.volume)} ${run.volumeUnit}`.trim(),
-    run.provenance.length === 0 ? 'not given' : listed(run.provenance.map(([key, value]) => `${key}: ${value}`)),
+    run.volume === null ? 'not given' : say`${asGiven(run.volume)}${unitAfter(run.volumeUnit)}`,
+    run.provenance.length === 0 ? 'not given' : run.provenance.map(([key, value]) => `${key}: ${value}`).join('; '),
   ]),
 });

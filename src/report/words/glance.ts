@@ -3,6 +3,7 @@ import { asGiven, percent, thinSpace } from '../../results/rounding.js';
 import type { ClaimResult, Improvement, Results } from '../../results/schema.js';
 import { cleanInline } from '../markdown/clean.js';
 import { list, listed, marked, paragraph, say, strong } from '../markdown/nodes.js';
+import { wouldDecide } from '../tables/budget.js';
 import { estimateOf, rawOf } from '../tables/claims.js';
 import { sham } from '../tables/improvements.js';
 import { combinationLabel, parameterLabel, parameterOf, unitAfter } from './labels.js';
@@ -44,15 +45,16 @@ function evidence(results: Results, claim: ClaimResult): PhrasingContent[] {
   const before = say`Raw ${what} ${rawOf(claim)}${unit}, `;
   if (claim.estimate === null) return say`${before}corrected: cannot tell. ${prose(claim.why)}`;
   const numbers = say`${before}corrected ${atOneSigma(estimateOf(claim))}${unit}`;
+  const decide = wouldDecide(results, claim.id);
   switch (claim.verdict) {
     case 'supported':
       return say`${numbers}: ${side(claim, true)}, at 95${thinSpace}% confidence.`;
     case 'contradicted':
       return say`${numbers}: ${side(claim, false)}, at 95${thinSpace}% confidence.`;
     case 'too close to call':
-      return say`${numbers}: well known, but too near ${bound(claim)} to say which side it is on.`;
+      return say`${numbers}: well known, but too near ${bound(claim)} to say which side it is on.${decide}`;
     case 'not settled':
-      return say`${numbers}: cannot tell yet. ${prose(claim.why)} More simulations can decide.`;
+      return say`${numbers}: cannot tell yet. ${prose(claim.why)}${decide === '' ? ' More simulations can decide.' : decide}`;
     case 'not assessable':
       return say`${numbers}: cannot tell. ${prose(claim.why)}`;
   }

@@ -1,6 +1,6 @@
 import { toString } from 'mdast-util-to-string';
 import type { PhrasingContent } from 'mdast';
-import { thinSpace } from '../../results/rounding.js';
+import { superscript, thinSpace } from '../../results/rounding.js';
 import type { Results } from '../../results/schema.js';
 import { cleanInline } from '../markdown/clean.js';
 import { say, text } from '../markdown/nodes.js';
@@ -34,9 +34,10 @@ export function unitAfter(unit: string): PhrasingContent[] {
   return unit === '' ? [] : say`${thinSpace}${unitLabel(unit)}`;
 }
 
-/** A unit is plain words, unless it is TeX; "h/Mpc" and "deg^2" read well as they are. */
-export function unitLabel(unit: string): PhrasingContent[] {
-  return unit.includes('\\') ? blockLabel(unit) : [text(unit)];
+/** A unit is plain words, unless it is TeX; the 2 of "deg^2" is raised. */
+function unitLabel(unit: string): PhrasingContent[] {
+  if (unit.includes('\\')) return blockLabel(unit);
+  return [text(unit.replace(/\^(-?\d+)/g, (_, power: string) => superscript(power)))];
 }
 
 /** "σ (unit)" for a column's heading. */

@@ -74,9 +74,10 @@ function volumeWords(scale: number): RootContent[] {
 /** How the noise of the derivatives is taken out here. */
 export const methodsFisher: CombinationSentenceMaker = (results, name) => {
   const found = results.combinations[name]!;
-  const noisy = Object.values(found.derivativeRealisations).some((n) => n !== null);
-  if (!noisy) {
-    return [paragraph(text('No derivative comes with realisations of known number: there is no noise that could be measured and taken out.'))];
+  const noise = noiseOf(results, found);
+  if (noise === 'none') return [paragraph(text('Every derivative is exact: there is no noise to take out, and raw and corrected values are the same.'))];
+  if (noise === 'not known') {
+    return [paragraph(text('At least one derivative came without realisations. The noise of the derivatives cannot be measured: it is still in the raw numbers.'))];
   }
   const convergence = results.convergence[name];
   const blocks = convergence?.realisations.map((n, i) => `${counted(convergence.blocks[i]!, 'block')} of ${Number.isInteger(n) ? count(n) : `about ${count(Math.round(n))}`}`) ?? [];
@@ -90,6 +91,12 @@ export const methodsFisher: CombinationSentenceMaker = (results, name) => {
     ),
   ];
 };
+
+function noiseOf(results: Results, { suites, parameters, errors }: CombinationResult): 'none' | 'measured' | 'not known' {
+  const kinds = suites.flatMap(({ runs }) => runs.flatMap((run) => parameters.map((name) => results.runs[run]?.derivatives[name]?.kind)));
+  if (kinds.every((kind) => kind === 'exact' || kind === 'insensitive' || kind === undefined)) return 'none';
+  return Object.values(errors).some(({ marginalised }) => marginalised.status === 'not assessable') ? 'not known' : 'measured';
+}
 
 /** What is known from elsewhere. */
 export const methodsPriors: CombinationSentenceMaker = (results, name) => {
