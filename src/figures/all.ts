@@ -1,3 +1,5 @@
+import { attribution } from './attribution.js';
+import { blockInformation } from './block-information.js';
 import { convergence } from './convergence.js';
 import { dataCorrelation } from './data-correlation.js';
 import { ellipses } from './ellipses.js';
@@ -5,6 +7,7 @@ import { errors } from './errors.js';
 import type { FigureMaker } from './figure-maker.js';
 import { gains } from './gains.js';
 import { meanVectors } from './mean-vectors.js';
+import { noiseTies } from './noise-ties.js';
 import { parameterCorrelation } from './parameter-correlation.js';
 import { responses } from './responses.js';
 import { scan } from './scan.js';
@@ -17,6 +20,9 @@ export const figureMakers: Readonly<Record<string, FigureMaker>> = {
   'mean-vectors': meanVectors,
   convergence,
   scan,
+  attribution,
+  'noise-ties': noiseTies,
+  'block-information': blockInformation,
   ellipses,
   'parameter-correlation': parameterCorrelation,
   'data-correlation': dataCorrelation,
