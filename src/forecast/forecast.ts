@@ -37,6 +37,7 @@ export function forecast(study: Study, generator: Results['generator']): Results
   const combinations = mapped(assessed, (one) => combinationResult(study, one));
   const gains = improvements(study, assessed);
   const claims = testClaims(study, assessed);
+  const belief = beliefResults(study, suites, assessed, { combinations, improvements: gains, claims });
   return {
     format: 1,
     generator,
@@ -47,9 +48,9 @@ export function forecast(study: Study, generator: Results['generator']): Results
     convergence: mapped(assessed, (one) => convergenceResult(study, one, assessed.get(study.baseline)!)),
     vectors: vectorResults(study, suites),
     dataCorrelation: present(Object.fromEntries(suites.map((suite) => [suite.name, dataCorrelation(suite)]))),
-    ...beliefResults(study, suites, assessed, { combinations, improvements: gains, claims }),
+    ...belief,
     claims,
-    checks: runChecks({ study, suites, combined }),
+    checks: runChecks({ study, suites, combined, measured: belief }),
     rules: {
       statuses: statusRules.map((rule) => ({ ...rule })),
       verdicts: verdictRules.map((rule) => ({ ...rule })),

@@ -1,4 +1,4 @@
-import type { CheckResult } from '../../results/schema.js';
+import type { CheckResult, Results } from '../../results/schema.js';
 import type { Study } from '../../study/study.js';
 import type { Combined } from '../combined.js';
 import type { Suite } from '../suite.js';
@@ -8,6 +8,8 @@ export interface CheckInput {
   readonly study: Study;
   readonly suites: readonly Suite[];
   readonly combined: readonly Combined[];
+  /** What was measured for the results, and is judged here. */
+  readonly measured: Pick<Results, 'gaussianity' | 'derivativeTests' | 'smallestDirections'>;
 }
 
 export type Check = (input: CheckInput) => readonly CheckResult[];

@@ -26,7 +26,7 @@ function studyOf(runs: readonly Run[], fiducialValue = 0): Study {
 }
 
 function results(check: Check, study: Study): readonly CheckResult[] {
-  return check({ study, suites: suitesOf(study), combined: study.combinations.map(({ name }) => combinedOf(study, name)) });
+  return check({ study, suites: suitesOf(study), combined: study.combinations.map(({ name }) => combinedOf(study, name)), measured: {} });
 }
 
 const plain = realisations(normalRows(40, size, 1), size, range(40));
@@ -139,7 +139,7 @@ describe('how nodes are matched', () => {
     const bare = nodes([-1, rows(null, -1, 0.3)], [1, rows(null, 1, 0.3)]);
     const other = realisations(normalRows(40, size, 5), size, range(40));
     const study = studyOf([run(plain, seeded), run(other, bare, 'two', 'added')]);
-    const messages = runChecks({ study, suites: suitesOf(study), combined: [combinedOf(study, 'joint')] }).filter(({ level }) => level === 'warning' || level === 'error');
+    const messages = runChecks({ study, suites: suitesOf(study), combined: [combinedOf(study, 'joint')], measured: {} }).filter(({ level }) => level === 'warning' || level === 'error');
     expect(messages).not.toEqual([]);
   });
 });
@@ -210,7 +210,7 @@ describe('all checks', () => {
   it('read rows without changing them, and have ids that occur once', () => {
     const study = studyOf([run(plain), run(realisations(normalRows(40, size, 7), size, range(40)), exact, 'two', 'added')]);
     const before = allRows(plain);
-    const found = runChecks({ study, suites: suitesOf(study), combined: [combinedOf(study, 'joint')] });
+    const found = runChecks({ study, suites: suitesOf(study), combined: [combinedOf(study, 'joint')], measured: {} });
     expect(new Set(found.map(({ id }) => id)).size).toBe(found.length);
     expect(allRows(plain)).toEqual(before);
   });
