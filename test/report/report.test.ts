@@ -7,6 +7,7 @@ import remarkParse from 'remark-parse';
 import { unified } from 'unified';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { visit } from 'unist-util-visit';
+import { inventedResults } from '../fixtures/invented-results.js';
 import { expectSafePage } from './page-rules.js';
 import { changedResults, rendered, smallResults } from './report-results.js';
 
@@ -202,5 +203,16 @@ describe('the parts of a report', () => {
     const files = await rendered(bare);
     expectSafePage(files.get('report.html')!);
     expect(files.get('report.md')).toContain('The study states no claims, and has nothing to compare its baseline with.');
+  });
+
+  it.each([
+    ['every status and verdict', {}],
+    ['one parameter and nothing to compare', { parameters: 1, combinations: 1 }],
+    ['labels longer than a line', { parameters: 8, combinations: 6, longLabels: true }],
+  ])('hold together with %s', async (_, options) => {
+    const files = await rendered(inventedResults(options), new Set(['html', 'markdown']));
+    const document = expectSafePage(files.get('report.html')!);
+    expect(document.body.textContent).not.toMatch(/\b(?:NaN|undefined|null|Infinity)\b|\[object/);
+    expect(files.get('report.md')).not.toMatch(/\b(?:NaN|null|Infinity)\b|\[object/);
   });
 });

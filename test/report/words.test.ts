@@ -117,7 +117,7 @@ describe('the verdict on a claim', () => {
   });
 
   it('is counted in the first line, whatever there is', () => {
-    expect(sentence('glance', withClaim({ verdict: 'supported' }))).toBe('**Of one claim, 1 is supported, once the noise in the derivatives is taken out.**');
+    expect(sentence('glance', withClaim({ verdict: 'supported' }))).toBe('**The one claim is supported, once the noise in the derivatives is taken out.**');
     const two = changedResults((results) => {
       results.claims = results.claims.map((claim) => ({ ...claim, verdict: 'contradicted' }));
     });

@@ -3,6 +3,7 @@ import type { Estimate, Results } from '../../results/schema.js';
 import { list, listed, paragraph, say } from '../markdown/nodes.js';
 import { combinationLabel, parameterLabel } from './labels.js';
 import { prose } from './prose.js';
+import { counted } from './values.js';
 import type { SentenceMaker } from './sentence-maker.js';
 import type { Named } from './tally.js';
 import { quotable, tallyStatuses, targetErrors, targetGains } from './tally.js';
@@ -18,7 +19,7 @@ export const convergenceLead: SentenceMaker = (results) => {
     ...errors.filter(({ estimate }) => !quotable(estimate)).map((one) => item(results, 'error on', one)),
     ...gains.filter(({ estimate }) => !quotable(estimate)).map((one) => item(results, 'gain on', one)),
   ];
-  const lead = say`Of ${String(errors.length)} errors and ${String(gains.length)} gains on target parameters, ${listed(tallyStatuses(statuses))}.`;
+  const lead = say`Of ${counted(errors.length, 'error')} and ${counted(gains.length, 'gain')} on target parameters, ${listed(tallyStatuses(statuses))}.`;
   if (open.length === 0) return [paragraph(...say`${lead} Each may be quoted, in its corrected form.`)];
   const rest = open.length > most ? [say`and ${String(open.length - most)} more, in the tables below.`] : [];
   return [paragraph(...say`${lead} Not to be quoted:`), list([...open.slice(0, most), ...rest]), ...blame(results)];

@@ -4,16 +4,17 @@ import type { Results } from '../../results/schema.js';
 import { list, listed, paragraph, say } from '../markdown/nodes.js';
 import { combinationLabel, nuisances, parameterLabel, parameterOf, targets, unitAfter } from './labels.js';
 import type { SentenceMaker } from './sentence-maker.js';
-import { quotable, tallyStatuses, targetErrors } from './tally.js';
+import { ofAll, quotable, tallyStatuses, targetErrors } from './tally.js';
 import { correctedInWords } from './values.js';
 
 export const errorLead: SentenceMaker = (results) => {
   const all = targetErrors(results);
   const hidden = nuisances(results).map((name) => parameterLabel(results, name));
-  const over = hidden.length === 0 ? [] : say`, all marginalised over ${listed(hidden)} as well`;
+  const over = hidden.length === 0 ? [] : say` All are marginalised over ${listed(hidden)} as well.`;
+  const statuses = tallyStatuses(all.map(({ estimate }) => estimate.status));
   return [
     paragraph(
-      ...say`Of ${String(all.length)} errors on target parameters${over}, ${listed(tallyStatuses(all.map(({ estimate }) => estimate.status)))}. The smallest that can be quoted:`,
+      ...say`${ofAll('errors on target parameters', 'error on a target parameter', statuses, all.length)}.${over} The smallest that can be quoted:`,
     ),
     list(targets(results).map((name) => smallest(results, name))),
   ];

@@ -2,14 +2,14 @@ import type { PhrasingContent } from 'mdast';
 import { asGiven, percent, thinSpace } from '../../results/rounding.js';
 import type { ClaimResult, Improvement, Results } from '../../results/schema.js';
 import { cleanInline } from '../markdown/clean.js';
-import { list, listed, marked, paragraph, say, strong } from '../markdown/nodes.js';
+import { list, marked, paragraph, say, strong } from '../markdown/nodes.js';
 import { wouldDecide } from '../tables/budget.js';
 import { estimateOf, rawOf } from '../tables/claims.js';
 import { sham } from '../tables/improvements.js';
 import { combinationLabel, parameterLabel, parameterOf, unitAfter } from './labels.js';
 import type { SentenceMaker } from './sentence-maker.js';
 import type { Named } from './tally.js';
-import { tallyStatuses, tallyVerdicts, targetGains } from './tally.js';
+import { ofAll, tallyStatuses, tallyVerdicts, targetGains } from './tally.js';
 import { prose } from './prose.js';
 import { atOneSigma, capital, correctedInWords, counted, raw } from './values.js';
 
@@ -19,16 +19,12 @@ export const glance: SentenceMaker = (results) => {
   const gains = targetGains(results);
   const first =
     verdicts.length > 0
-      ? say`${ofAll(verdicts.length, 'claim')} ${listed(tallyVerdicts(verdicts))}, once the noise in the derivatives is taken out.`
+      ? say`${ofAll('claims', 'claim', tallyVerdicts(verdicts), verdicts.length)}, once the noise in the derivatives is taken out.`
       : gains.length > 0
-        ? say`The study states no claims. ${ofAll(gains.length, 'gain on a target parameter', 'gains on target parameters')} ${listed(tallyStatuses(gains.map(({ estimate }) => estimate.status)))}.`
+        ? say`The study states no claims. ${ofAll('gains on target parameters', 'gain on a target parameter', tallyStatuses(gains.map(({ estimate }) => estimate.status)), gains.length)}.`
         : say`The study states no claims, and has nothing to compare its baseline with.`;
   return [paragraph(strong(...first))];
 };
-
-function ofAll(n: number, one: string, many = `${one}s`): string {
-  return n === 1 ? `Of one ${one},` : `Of ${String(n)} ${many},`;
-}
 
 /** One sentence a claim: the verdict, the claim, what it rests on. */
 export const verdictList: SentenceMaker = (results) =>

@@ -7,7 +7,7 @@ import { parameterLabel, targets } from './labels.js';
 import type { CombinationSentenceMaker, SentenceMaker } from './sentence-maker.js';
 import { tallyStatuses, targetGains } from './tally.js';
 import { prose } from './prose.js';
-import { correctedInWords, noNumber, raw } from './values.js';
+import { correctedInWords, counted, noNumber, raw } from './values.js';
 
 export const improvementLead: SentenceMaker = (results) => {
   const all = targetGains(results);
@@ -16,7 +16,7 @@ export const improvementLead: SentenceMaker = (results) => {
   const statuses = all.map(({ estimate }) => estimate.status);
   return [
     paragraph(
-      ...say`Of ${String(all.length)} gains on target parameters, ${shown === 0 ? 'none is' : shown === 1 ? '1 is' : `${String(shown)} are`} above 1 at 95${thinSpace}% confidence once the noise in the derivatives is taken out. Of their sizes, ${listed(tallyStatuses(statuses))}.`,
+      ...say`Of ${counted(all.length, 'gain')} on target parameters, ${shown === 0 ? 'none is' : shown === 1 ? '1 is' : `${String(shown)} are`} above 1 at 95${thinSpace}% confidence once the noise in the derivatives is taken out. Of their sizes, ${listed(tallyStatuses(statuses))}.`,
     ),
   ];
 };

@@ -40,6 +40,13 @@ export function tallyVerdicts(verdicts: readonly Verdict[]): readonly string[] {
   return tally(verdicts, verdictOrder);
 }
 
+/** "Of 5 claims, 2 are supported and 3 are contradicted"; "The one claim is supported". */
+export function ofAll(things: string, one: string, tallied: readonly string[], n: number): string {
+  if (n === 1) return `The one ${one} ${tallied[0]?.replace(/^1 /, '') ?? ''}`;
+  const last = tallied.at(-1) ?? '';
+  return `Of ${String(n)} ${things}, ${tallied.length === 1 ? last : `${tallied.slice(0, -1).join(', ')} and ${last}`}`;
+}
+
 function tally<T extends string>(words: readonly T[], order: readonly T[]): readonly string[] {
   return order.flatMap((word) => {
     const n = words.filter((one) => one === word).length;
