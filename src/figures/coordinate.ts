@@ -3,28 +3,26 @@ import type { VectorResult } from '../results/schema.js';
 import { horizontalAxis } from './axes.js';
 import type { Drawing } from './drawing.js';
 import { axisLabel } from './labels.js';
-import { logTicks } from './log-ticks.js';
-import { tick } from './panels.js';
+import { linearTicks, logTicks } from './log-ticks.js';
 
 /** Positive coordinates over more than a decade are the trade's cue for a logarithmic axis. */
-function isLogarithmic({ values, coordinate }: VectorResult): boolean {
-  return coordinate !== null && values.every((value) => value > 0) && Math.max(...values) / Math.min(...values) > 10;
+export function isLogarithmic(values: readonly number[]): boolean {
+  return values.every((value) => value > 0) && Math.max(...values) / Math.min(...values) > 10;
 }
+
+type Along = Pick<VectorResult, 'values' | 'coordinate'>;
 
 /** Horizontal scale of a block: its coordinate, or the entry where it has none. */
-export function coordinateScale(vector: VectorResult) {
-  return isLogarithmic(vector)
-    ? { type: 'log' as const }
-    : { type: 'linear' as const, ticks: 4, tickFormat: tick, label: labelOf(vector), labelAnchor: 'center' as const, labelArrow: 'none' as const };
+export function coordinateScale({ values, coordinate }: Along): { readonly type: 'log' | 'linear'; readonly domain: [number, number] } {
+  const [low, high] = [Math.min(...values), Math.max(...values)];
+  const type = coordinate !== null && isLogarithmic(values) ? 'log' : 'linear';
+  if (low < high) return { type, domain: [low, high] };
+  return { type, domain: type === 'log' ? [low / 2, low * 2] : [low - 1, low + 1] };
 }
 
-/** The axis that a logarithmic coordinate needs beside its scale. */
-export function coordinateAxis(drawing: Drawing, vector: VectorResult): readonly Markish[] {
-  if (!isLogarithmic(vector)) return [];
-  const ticks = logTicks([Math.min(...vector.values), Math.max(...vector.values)], 4);
-  return [horizontalAxis(drawing, { ticks, label: labelOf(vector) })];
-}
-
-function labelOf({ coordinate, unit }: VectorResult): string {
-  return axisLabel(coordinate ?? 'entry', unit);
+/** The axis of a block; without a label where another panel below has it. */
+export function coordinateAxis(drawing: Drawing, vector: Along & Pick<VectorResult, 'unit'>, hasLabel = true): Markish {
+  const { type, domain } = coordinateScale(vector);
+  const ticks = type === 'log' ? logTicks(domain, 4) : linearTicks(domain[0], domain[1], 5);
+  return horizontalAxis(drawing, { ticks, label: hasLabel ? axisLabel(vector.coordinate ?? 'entry', vector.unit) : null });
 }

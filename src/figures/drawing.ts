@@ -1,5 +1,6 @@
 import type * as PlotModule from '@observablehq/plot';
 import type { Figure, FigureWords } from './figure.js';
+import { serialise } from './serialise.js';
 import { tidy } from './tidy.js';
 
 /** The one document that everything is drawn in, and the library that draws. */
@@ -21,13 +22,14 @@ export interface Panel {
   readonly y: number;
 }
 
-/** A key to the looks of a figure, or free text: drawn by us, since Plot's own keys are not SVG. */
+/** Words at a place of the figure. */
 export interface Note {
   readonly x: number;
   readonly y: number;
   readonly text: string;
   readonly anchor?: 'start' | 'middle' | 'end';
   readonly weight?: 'bold';
+  readonly style?: 'italic';
   readonly colour?: string;
   readonly size?: number;
 }
@@ -72,6 +74,7 @@ function drawNote(document: Document, note: Note): Element {
   text.setAttribute('y', String(note.y));
   text.setAttribute('text-anchor', note.anchor ?? 'start');
   if (note.weight !== undefined) text.setAttribute('font-weight', note.weight);
+  if (note.style !== undefined) text.setAttribute('font-style', note.style);
   if (note.colour !== undefined) text.setAttribute('fill', note.colour);
   if (note.size !== undefined) text.setAttribute('font-size', String(note.size));
   text.textContent = note.text;
@@ -81,10 +84,15 @@ function drawNote(document: Document, note: Note): Element {
 /** A finished figure from what was composed. */
 export function finish(svg: Element, words: FigureWords): Figure {
   tidy(svg, words.name, words.title, words.alternative);
-  const inline = svg.outerHTML;
+  const inline = serialise(svg);
   const ground = svg.ownerDocument.createElementNS(namespace, 'rect');
   for (const [name, value] of [['width', '100%'], ['height', '100%'], ['fill', 'white']] as const) ground.setAttribute(name, value);
   const [, description] = svg.children;
   description?.after(ground);
-  return { ...words, inline, standalone: `${svg.outerHTML}\n` };
+  return { ...words, inline, standalone: `${serialise(svg)}\n` };
+}
+
+/** A name of the study as part of a file name and of an id. */
+export function stem(name: string): string {
+  return name.replaceAll(/[^A-Za-z0-9_-]+/g, '-');
 }

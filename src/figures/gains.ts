@@ -1,31 +1,32 @@
-import type { Improvement, Results } from '../results/schema.js';
 import { roundTo } from '../results/rounding.js';
+import type { Improvement, Results } from '../results/schema.js';
 import { horizontalAxis } from './axes.js';
-import type { Drawing } from './drawing.js';
+import type { Drawing, Note } from './drawing.js';
 import { compose, finish } from './drawing.js';
 import type { Figure } from './figure.js';
-import { parameterLabel, parameterName, parameterNames, shortened } from './labels.js';
+import type { GainHead, GainRow, Kind } from './gain-rows.js';
+import { arrangeGains } from './gain-rows.js';
+import { gainWords } from './gain-words.js';
+import type { KeyItem } from './key.js';
+import { drawKey, quietItem } from './key.js';
+import { parameterLabel } from './labels.js';
 import { logTicks } from './log-ticks.js';
-import { lookOf, quiet, warning } from './palette.js';
+import { faint, lookOf, quiet, warning } from './palette.js';
+import { pageWidth } from './panels.js';
+import { roomBeside } from './room.js';
+import { fitted, fittedApart, textWidth } from './text-width.js';
 
-type Kind = 'marginalised' | 'fixed';
-
-/** One row: a parameter in a combination. */
-export interface GainRow {
-  readonly parameter: string;
-  readonly combination: string;
-  readonly label: string;
-  readonly place: number;
-  readonly look: number;
-  readonly gain: Improvement;
+/** Columns: parameter, combination, plot, value with interval, status. */
+interface Columns {
+  /** Room for the parameter beside its rows; null puts it over them. */
+  readonly parameter: number | null;
+  readonly left: number;
+  readonly right: number;
 }
 
-const rowHeight = 22;
-const gap = 16;
-const left = 300;
-const right = 160;
-const width = 820;
-const top = 64;
+const valueWidth = 150;
+const statusWidth = 96;
+const widestLabel = 210;
 
 /** Raw, sham and corrected gain of every parameter and combination over the baseline. */
 export function gains(results: Results, drawing: Drawing): readonly Figure[] {
@@ -33,108 +34,127 @@ export function gains(results: Results, drawing: Drawing): readonly Figure[] {
   return (['marginalised', 'fixed'] as const).map((kind) => gainFigure(results, drawing, kind));
 }
 
-/** Rows from top to bottom, with a gap between parameters. */
-export function gainRows(results: Results, kind: Kind): readonly GainRow[] {
-  const combinations = Object.keys(results.combinations);
-  let place = 0;
-  return parameterNames(results).flatMap((parameter, k) => {
-    if (k > 0) place += gap;
-    return Object.entries(results.improvements).map(([combination, gainsOf]) => {
-      place += rowHeight;
-      const label = results.combinations[combination]?.label ?? combination;
-      return { parameter, combination, label, place, look: combinations.indexOf(combination), gain: gainsOf[parameter]![kind] };
-    });
-  });
+function columnsFor(results: Results): Columns {
+  const names = Math.max(...results.parameters.map(({ name }) => textWidth(parameterLabel(results, name), 15, true)));
+  const labels = Object.keys(results.improvements).map((name) => textWidth(results.combinations[name]?.label ?? name));
+  const parameter = names <= 72 ? names + 14 : null;
+  return { parameter, left: 12 + (parameter ?? 10) + Math.min(widestLabel, Math.max(...labels)) + 14, right: valueWidth + statusWidth };
 }
 
 function gainFigure(results: Results, drawing: Drawing, kind: Kind): Figure {
-  const rows = gainRows(results, kind);
-  const height = top + rows[rows.length - 1]!.place + 56;
-  const panel = drawRows(drawing, rows, height);
-  const heads = rows.filter(({ parameter }, k) => rows[k - 1]?.parameter !== parameter);
-  const notes = [
-    ...key(),
-    ...heads.map((row) => ({
-      x: 12,
-      y: top + row.place + 4,
-      text: shortened(parameterLabel(results, row.parameter), 24),
-      weight: 'bold' as const,
-      size: 14,
-    })),
-    ...rows.map((row) => ({
-      x: left - 12,
-      y: top + row.place + 4,
-      text: shortened(row.label, 30),
-      anchor: 'end' as const,
-      colour: lookOf(row.look).colour,
-    })),
-    ...rows.map((row) => ({ x: width - right + 56, y: top + row.place + 4, text: valueOf(row.gain), anchor: 'end' as const, weight: 'bold' as const })),
-    ...rows.map((row) => ({ x: width - right + 64, y: top + row.place + 4, text: row.gain.status, colour: quiet.light })),
+  const columns = columnsFor(results);
+  const arranged = arrangeGains(results, kind, columns.parameter === null ? 24 : 0);
+  const key = drawKey(drawing, keyItems());
+  const top = key.height + 46;
+  const height = top + arranged.height + 48;
+  const panels = [
+    { svg: key.svg, x: 0, y: 6 },
+    { svg: drawRows(drawing, arranged.rows, arranged.heads, columns, arranged.height), x: 0, y: top - marginTop },
   ];
-  const svg = compose(drawing, { width, height, panels: [{ svg: panel, x: 0, y: 0 }], notes });
-  return finish(svg, words(results, rows, kind));
+  const notes = notesOf(results, arranged.rows, arranged.heads, columns).map((note) => ({ ...note, y: note.y + top }));
+  const svg = compose(drawing, { width: pageWidth, height, panels, notes });
+  return finish(svg, gainWords(results, kind, arranged.rows, arranged.leftOut));
 }
 
-function valueOf({ corrected, standardError }: Improvement): string {
-  return corrected === null ? '–' : roundTo(corrected, standardError);
-}
-
-function key() {
-  const y = 22;
+function keyItems(): readonly KeyItem[] {
   return [
-    { x: left, y, text: '○ raw', colour: quiet.light },
-    { x: left + 62, y, text: '✕ sham: derivative noise alone', colour: warning.light },
-    { x: left + 262, y, text: '● corrected, 68 % and 95 %' },
+    quietItem('raw: derivative noise and all', { symbol: { name: 'circle', filled: false } }),
+    { text: 'sham: what the noise alone would show', sample: { colour: warning.light, symbol: { name: 'times', filled: false } } },
+    { text: 'corrected, with 68 % and 95 %', coloured: true, sample: { colour: lookOf(0).colour, symbol: { name: 'circle', filled: true }, line: { width: 1.4 }, within: true } },
   ];
 }
 
-function drawRows(drawing: Drawing, rows: readonly GainRow[], height: number): Element {
+function notesOf(results: Results, rows: readonly GainRow[], heads: readonly GainHead[], { left, right }: Columns): readonly Note[] {
+  const short = fittedApart([...new Set(rows.map(({ label }) => label))], Math.min(widestLabel, left - 30));
+  const labels = new Map([...new Set(rows.map(({ label }) => label))].map((label, k) => [label, short[k]!]));
+  const values = pageWidth - right + 14;
+  return [
+    { x: values, y: -16, text: 'corrected', colour: quiet.light },
+    { x: pageWidth - statusWidth + 2, y: -16, text: 'status', colour: quiet.light },
+    ...heads.map(({ kind, parameter, place }): Note =>
+      kind === 'nuisance'
+        ? { x: 12, y: place, text: 'nuisance parameters', colour: quiet.light, style: 'italic' }
+        : { x: 12, y: place + 5, text: fitted(parameterLabel(results, parameter), pageWidth / 2, 15, true), weight: 'bold', size: 15 },
+    ),
+    ...rows.flatMap(({ label, look, place, gain }): readonly Note[] => [
+      { x: left - 12, y: place + 4, text: labels.get(label)!, anchor: 'end', colour: lookOf(look).colour },
+      ...valueNotes(gain, values, place + 4),
+      { x: pageWidth - statusWidth + 2, y: place + 4, text: gain.status, colour: quiet.light },
+    ]),
+  ];
+}
+
+/** The corrected value, and its 95 % interval in quiet ink. */
+function valueNotes({ corrected, standardError, interval95 }: Improvement, x: number, y: number): readonly Note[] {
+  if (corrected === null) return [{ x, y, text: '–', weight: 'bold' }];
+  const text = roundTo(corrected, standardError);
+  const value: Note = { x, y, text, weight: 'bold' };
+  if (interval95 === null) return [value];
+  const [low, high] = interval95.map((end) => roundTo(end, standardError));
+  return [value, { x: x + Math.max(44, textWidth(text, 12, true) + 6), y, text: `${low!}–${high!}`, colour: quiet.light, size: 11 }];
+}
+
+/** From the marks; an interval may be much wider than they, and is then cut with an arrow. */
+export function gainDomain(rows: readonly GainRow[]): [number, number] {
+  const marks = [1, ...rows.flatMap(({ gain }) => [gain.raw, gain.sham, gain.corrected])].filter((value) => value !== null);
+  const ends = rows.flatMap(({ gain }) => gain.interval95 ?? []);
+  const [low, high] = [Math.min(...marks), Math.max(...marks)];
+  return [Math.max(Math.min(0.95, low, ...ends), low / 2) / 1.03, Math.min(Math.max(1.15, high, ...ends), high * 2) * 1.03];
+}
+
+const marginTop = 24;
+/** Pixels of "cannot tell". */
+const wordsWidth = 72;
+
+function drawRows(drawing: Drawing, rows: readonly GainRow[], heads: readonly GainHead[], { left, right }: Columns, height: number): Element {
   const { document, plot } = drawing;
-  const y = (row: GainRow): number => row.place;
-  const known = rows.filter(({ gain }) => gain.corrected !== null);
-  const unknown = rows.filter(({ gain }) => gain.corrected === null);
-  const colour = (row: GainRow): string => lookOf(row.look).colour;
-  const values = rows.flatMap(({ gain }) => [gain.raw, gain.sham, ...(gain.interval95 ?? [])]).filter((value) => value !== null);
-  const domain: [number, number] = [Math.min(0.9, ...values) / 1.03, Math.max(1.15, ...values) * 1.03];
+  const domain = gainDomain(rows);
+  const pixels = pageWidth - left - right;
   return plot.plot({
     document,
-    width,
-    height,
+    width: pageWidth,
+    height: height + marginTop + 48,
     marginLeft: left,
     marginRight: right,
-    marginTop: top,
-    marginBottom: 44,
+    marginTop,
+    marginBottom: 48,
     style: { fontSize: '12px' },
     x: { type: 'log', domain },
-    y: { type: 'linear', domain: [0, rows[rows.length - 1]!.place + rowHeight / 2], range: [top, top + rows[rows.length - 1]!.place + rowHeight / 2], axis: null },
+    y: { type: 'linear', domain: [0, height], range: [marginTop, marginTop + height], axis: null },
     marks: [
-      horizontalAxis(drawing, { ticks: logTicks(domain, 9), label: 'error of the baseline / error of the combination (above 1 is better)' }),
-      plot.ruleX([1], { stroke: quiet.light, strokeDasharray: '4 3' }),
-      plot.text([1], { x: (value: number) => value, frameAnchor: 'top', dy: -12, text: () => 'no gain', fill: quiet.light }),
-      plot.ruleY(known, { x1: (row: GainRow) => row.gain.interval95![0], x2: (row: GainRow) => row.gain.interval95![1], y, stroke: colour, strokeWidth: 1.2 }),
-      plot.ruleY(known, { x1: (row: GainRow) => row.gain.interval![0], x2: (row: GainRow) => row.gain.interval![1], y, stroke: colour, strokeWidth: 4 }),
-      plot.dot(rows.filter(({ gain }) => gain.sham !== null), { x: (row: GainRow) => row.gain.sham, y, symbol: 'times', r: 4, stroke: warning.light, strokeWidth: 1.8 }),
-      plot.dot(rows.filter(({ gain }) => gain.raw !== null), { x: (row: GainRow) => row.gain.raw, y, r: 4.5, stroke: quiet.light, strokeWidth: 1.6 }),
-      plot.dot(known, { x: (row: GainRow) => row.gain.corrected, y, r: 5, fill: colour, symbol: (row: GainRow) => lookOf(row.look).symbol, stroke: 'none' }),
-      plot.text(unknown, { x: domain[0], y, text: () => 'cannot tell', textAnchor: 'start', dx: 6, fill: warning.light }),
+      horizontalAxis(drawing, { ticks: logTicks(domain, Math.floor(pixels / 42)), label: 'gain: error of the baseline / error of the combination' }),
+      plot.ruleY(heads.filter(({ kind }, k) => kind === 'parameter' && k > 0), { y: (head: GainHead) => firstPlace(rows, head) - 18, insetLeft: 12 - left, insetRight: 12 - right, stroke: faint.light, strokeWidth: 0.8 }),
+      plot.ruleX([1], { stroke: 'currentColor', strokeWidth: 1.2 }),
+      plot.text([1], { x: (value: number) => value, frameAnchor: 'top', dy: -12, text: () => 'no gain', fontWeight: 'bold' }),
+      plot.text([1], { x: (value: number) => value, frameAnchor: 'top', dy: -12, dx: 30, textAnchor: 'start', text: () => 'better →', fill: quiet.light }),
+      ...gainMarks(drawing, rows, domain, pixels),
     ],
   });
 }
 
-function words(results: Results, rows: readonly GainRow[], kind: Kind) {
-  const baseline = results.combinations[results.study.baseline]?.label ?? results.study.baseline;
-  const sentences = rows.map(({ parameter, label, gain }) => {
-    const name = parameterName(results, parameter);
-    const raw = gain.raw === null ? 'none' : roundTo(gain.raw, gain.standardError);
-    const sham = gain.sham === null ? 'none' : roundTo(gain.sham, null);
-    const corrected = gain.corrected === null ? 'cannot tell' : roundTo(gain.corrected, gain.standardError);
-    return `${name}, ${label}: raw ${raw}, sham ${sham}, corrected ${corrected} (${gain.status}).`;
-  });
-  const others = kind === 'marginalised' ? 'with the other parameters free' : 'with the other parameters known';
-  return {
-    name: `gains-${kind}`,
-    title: `Gain over ${baseline}, ${kind}`,
-    alternative: `Gain in each parameter over ${baseline}, ${others}. ${sentences.join(' ')}`,
-    caption: `Gain over ${baseline}, ${others}. A raw gain (○) that is no larger than the sham gain (✕) is what derivative noise alone would have shown; the corrected gain (filled) with its interval is the one to quote.`,
-  };
+/** Where the rows of a head begin. */
+function firstPlace(rows: readonly GainRow[], { parameter, place }: GainHead): number {
+  return Math.min(place, rows.find((row) => row.parameter === parameter)?.place ?? place);
+}
+
+function gainMarks({ plot }: Drawing, rows: readonly GainRow[], domain: readonly [number, number], pixels: number) {
+  const y = (row: GainRow): number => row.place;
+  const known = rows.filter(({ gain }) => gain.corrected !== null);
+  const colour = (row: GainRow): string => lookOf(row.look).colour;
+  const inside = (value: number): number => Math.min(domain[1], Math.max(domain[0], value));
+  const has = (pick: (gain: Improvement) => number | null): readonly GainRow[] => rows.filter(({ gain }) => pick(gain) !== null);
+  const cut = (end: 0 | 1): readonly GainRow[] => known.filter(({ gain }) => inside(gain.interval95![end]) !== gain.interval95![end]);
+  return [
+    plot.ruleY(known, { x1: (row: GainRow) => inside(row.gain.interval95![0]), x2: (row: GainRow) => inside(row.gain.interval95![1]), y, stroke: colour, strokeWidth: 1.4 }),
+    plot.ruleY(known, { x1: (row: GainRow) => inside(row.gain.interval![0]), x2: (row: GainRow) => inside(row.gain.interval![1]), y, stroke: colour, strokeWidth: 5 }),
+    ...([0, 1] as const).map((end) => plot.dot(cut(end), { x: domain[end], y, symbol: 'triangle', rotate: end === 1 ? 90 : -90, r: 4, fill: colour, stroke: 'none' })),
+    plot.dot(known, { x: (row: GainRow) => row.gain.corrected, y, r: 5.2, fill: colour, symbol: (row: GainRow) => lookOf(row.look).symbol, stroke: 'none' }),
+    plot.dot(has(({ raw }) => raw), { x: (row: GainRow) => row.gain.raw, y, r: 4.5, stroke: quiet.light, strokeWidth: 1.7 }),
+    plot.dot(has(({ sham }) => sham), { x: (row: GainRow) => row.gain.sham, y, symbol: 'times', r: 4, stroke: warning.light, strokeWidth: 1.9 }),
+    ...rows.filter(({ gain }) => gain.corrected === null).map((row) => {
+      const marks = [row.gain.raw, row.gain.sham].filter((value) => value !== null);
+      const { at, anchor, dx } = roomBeside(marks, [1], domain, pixels, wordsWidth);
+      return plot.text([row], { x: at, y, dx, textAnchor: anchor, text: () => 'cannot tell', fill: warning.light, fontStyle: 'italic' });
+    }),
+  ];
 }

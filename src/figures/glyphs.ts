@@ -4,12 +4,15 @@
  */
 export const marks = { base: '\uE000', sub: '\uE001', sup: '\uE002' } as const;
 
+/** Size of sub- and superscripts over that of the line. */
+export const shiftedSize = 0.75;
+
 const greek: Readonly<Record<string, string>> = {
   alpha: 'α', beta: 'β', gamma: 'γ', delta: 'δ', epsilon: 'ϵ', varepsilon: 'ε', zeta: 'ζ', eta: 'η', theta: 'θ', vartheta: 'ϑ',
   iota: 'ι', kappa: 'κ', lambda: 'λ', mu: 'μ', nu: 'ν', xi: 'ξ', pi: 'π', rho: 'ρ', sigma: 'σ', tau: 'τ', upsilon: 'υ', phi: 'ϕ',
   varphi: 'φ', chi: 'χ', psi: 'ψ', omega: 'ω', Gamma: 'Γ', Delta: 'Δ', Theta: 'Θ', Lambda: 'Λ', Xi: 'Ξ', Pi: 'Π', Sigma: 'Σ',
   Upsilon: 'Υ', Phi: 'Φ', Psi: 'Ψ', Omega: 'Ω', ell: 'ℓ', hbar: 'ℏ', infty: '∞', times: '×', cdot: '·', pm: '±', prime: '′',
-  langle: '⟨', rangle: '⟩', partial: '∂', nabla: '∇', odot: '⊙', oplus: '⊕', star: '⋆', ast: '∗', sim: '∼', approx: '≈', le: '≤', ge: '≥',
+  sum: '∑', langle: '⟨', rangle: '⟩', partial: '∂', nabla: '∇', odot: '⊙', oplus: '⊕', star: '⋆', ast: '∗', sim: '∼', approx: '≈', le: '≤', ge: '≥',
 }; // prettier-ignore
 
 const accents: Readonly<Record<string, string>> = { hat: '\u0302', bar: '\u0304', tilde: '\u0303', dot: '\u0307', vec: '\u20D7', overline: '\u0305', widehat: '\u0302' };
@@ -25,6 +28,11 @@ interface Cursor {
 export function glyphs(tex: string): string {
   const cursor = { tex: tex.replaceAll(/[\uE000-\uE002]/g, ''), place: 0 };
   return sequence(cursor, false);
+}
+
+/** The letter of a TeX command that stands for one: ell, nu. */
+export function greekLetter(name: string): string | undefined {
+  return Object.hasOwn(greek, name) ? greek[name] : undefined;
 }
 
 /** The same without shifts, for titles and descriptions: Ω_m. */
@@ -88,7 +96,7 @@ function command(cursor: Cursor): string {
   cursor.place += name.length;
   while (cursor.tex[cursor.place] === ' ') cursor.place += 1;
   if (faces.has(name)) return argument(cursor);
-  const accent = accents[name];
+  const accent = Object.hasOwn(accents, name) ? accents[name] : undefined;
   if (accent !== undefined) return argument(cursor) + accent;
-  return greek[name] ?? name;
+  return greekLetter(name) ?? name;
 }

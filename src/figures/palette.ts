@@ -18,7 +18,7 @@ const hues: readonly Colour[] = [
 ];
 
 /** Names for the marks of a combination; kept by Plot's own shapes. */
-const symbols = ['circle', 'square', 'triangle', 'diamond', 'star', 'wye'] as const;
+const symbols = ['circle', 'square', 'triangle', 'diamond', 'star', 'cross'] as const;
 const dashes = ['', '7 3', '2 3', '9 3 2 3', '12 4', '5 2 1 2 1 2'] as const;
 
 /** How a combination looks, in every figure. */
@@ -41,13 +41,15 @@ export function lookOf(index: number): Look {
 
 /** Quiet ink for what is not a measurement: rules, references, what is less sure. */
 export const quiet: Colour = { light: '#6b7280', dark: '#a3acb8' };
+/** Lines to guide the eye. */
+export const faint: Colour = { light: '#dde1e6', dark: '#353d49' };
 /** The sham gain, and everything that says "this is noise". */
 export const warning: Colour = { light: '#a01c2e', dark: '#ff8d97' };
 /** Ends of the correlation scale. */
 export const negative: Colour = { light: '#8a4b08', dark: '#e0a15c' };
 export const positive: Colour = { light: '#1f5f8b', dark: '#7fb9e4' };
 
-const all: readonly Colour[] = [...hues, quiet, warning, negative, positive];
+const all: readonly Colour[] = [...hues, quiet, faint, warning, negative, positive];
 
 /** Rules for the report's style sheet that give inlined figures the dark values. Attributes yield to any rule. */
 export function darkRules(scope: string): string {

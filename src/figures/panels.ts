@@ -13,7 +13,7 @@ export interface Grid {
 /** Width of a figure on the page. */
 export const pageWidth = 820;
 
-/** A grid for a number of panels: two to four across. */
+/** A grid for a number of panels, so many across at most. */
 export function gridFor(count: number, height: number, top: number, most = 3): Grid {
   const columns = Math.max(1, Math.min(most, count));
   return { columns, width: Math.floor(pageWidth / columns), height, top };
@@ -31,7 +31,7 @@ export function gridHeight(grid: Grid, count: number): number {
   return grid.top + Math.ceil(count / grid.columns) * grid.height;
 }
 
-const shapes: Readonly<Record<string, string>> = { circle: '●', square: '■', triangle: '▲', diamond: '◆', star: '★', wye: '✦' };
+const shapes: Readonly<Record<string, string>> = { circle: '●', square: '■', triangle: '▲', diamond: '◆', star: '★', cross: '✚' };
 
 /** The combinations with their colours and shapes, wrapped over lines from the top. */
 export function combinationKey(entries: readonly { readonly label: string; readonly look: number }[]): readonly Note[] {
@@ -59,6 +59,6 @@ export function keyHeight(notes: readonly Note[]): number {
 export function tick(value: number): string {
   if (value === 0) return '0';
   const size = Math.abs(value);
-  const text = size >= 1e5 || size < 1e-3 ? value.toExponential(1).replace('.0e', 'e') : String(Number(value.toPrecision(3)));
+  const text = size >= 1e5 || size < 1e-3 ? value.toExponential(1).replace('.0e', 'e') : String(Number(value.toPrecision(4)));
   return text.replaceAll('-', '\u2212').replace('e+', 'e');
 }

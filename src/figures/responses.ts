@@ -1,11 +1,16 @@
 import type { Results, VectorResult } from '../results/schema.js';
+import { verticalAxis } from './axes.js';
 import { coordinateAxis, coordinateScale } from './coordinate.js';
 import type { Drawing } from './drawing.js';
-import { compose, finish } from './drawing.js';
+import { finish, stem } from './drawing.js';
 import type { Figure } from './figure.js';
-import { blockLabel, parameterLabel, parameterName, shortened } from './labels.js';
+import { drawKey } from './key.js';
+import { blockLabel, parameterLabel, parameterName, parameterNames } from './labels.js';
+import { linearTicks } from './log-ticks.js';
+import type { Place } from './matrix.js';
+import { composeTable } from './matrix.js';
 import { lookOf, quiet } from './palette.js';
-import { gridFor, gridHeight, pageWidth, placed, tick } from './panels.js';
+import { tick } from './panels.js';
 
 /** One derivative along a block, in units of the data's standard deviation. */
 interface Point {
@@ -16,14 +21,12 @@ interface Point {
 }
 
 interface Block {
-  readonly probe: string;
   readonly block: string;
   readonly vector: VectorResult;
 }
 
-function blocksOf(results: Results, probe: string): readonly Block[] {
-  return Object.entries(results.vectors[probe] ?? {}).map(([block, vector]) => ({ probe, block, vector }));
-}
+/** Most rows of panels; beyond it nuisance parameters are left out. */
+const mostRows = 10;
 
 function titleOf({ block, vector }: Block): string {
   return vector.label === '' ? block : blockLabel(vector.label);
@@ -31,59 +34,79 @@ function titleOf({ block, vector }: Block): string {
 
 /** Derivatives of each block, one figure a probe: rows are parameters, columns blocks. */
 export function responses(results: Results, drawing: Drawing): readonly Figure[] {
-  return Object.keys(results.vectors).map((probe) => {
-    const blocks = blocksOf(results, probe);
-    const across = Math.min(blocks.length, 4);
-    const cases = chunks(blocks, across).flatMap((row) => results.parameters.flatMap(({ name }) => row.map((block) => ({ name, block }))));
-    const grid = gridFor(cases.length, 140, 34, across);
-    const svgs = cases.map(({ name, block }) => panel(results, drawing, name, block, grid.width, grid.height));
+  const targets = parameterNames(results, 'target');
+  const drawn = results.parameters.length <= mostRows || targets.length === 0 ? parameterNames(results) : targets;
+  return Object.entries(results.vectors).map(([probe, vectors]) => {
+    const blocks = Object.entries(vectors).map(([block, vector]): Block => ({ block, vector }));
     const label = results.probes[probe]?.label ?? probe;
-    const notes = [{ x: 12, y: 20, text: `${label}: derivative / (standard deviation of the entry); band: its noise, one standard error`, colour: quiet.light }];
-    const svg = compose(drawing, { width: pageWidth, height: gridHeight(grid, cases.length), panels: placed(grid, svgs), notes });
+    const isNoisy = blocks.some(({ vector }) => Object.values(vector.derivatives).some(({ standardError }) => standardError !== null));
+    const { colour } = lookOf(0);
+    const key = drawKey(drawing, [
+      { text: 'derivative / standard deviation of the entry', sample: { colour, line: { width: 1.6 } } },
+      ...(isNoisy ? [{ text: 'its noise: one standard error', sample: { colour, band: true } }] : []),
+    ]);
+    const domains = drawn.map((name) => rangeOf(blocks.flatMap((block) => pointsOf(block, name))));
+    const svg = composeTable(drawing, key, {
+      columns: blocks.map((block) => ({ text: titleOf(block) })),
+      rows: drawn.map((name) => parameterLabel(results, name)),
+      rowHeight: 104,
+      foot: 26,
+      panel: (row, column, place) => panel(drawing, drawn[row]!, blocks[column]!, domains[row]!, place),
+    });
+    const left = results.parameters.length - drawn.length;
     return finish(svg, {
-      name: `responses-${probe}`,
+      name: `responses-${stem(probe)}`,
       title: `Responses of ${label}`,
       alternative: describe(results, label, blocks),
-      caption: `${label}: derivative by each parameter in units of the data's standard deviation, with a band of one standard error of the derivative. Where the band is as wide as the curve is tall, the entry adds noise that looks like information.`,
+      caption:
+        `${label}: derivative by each parameter in units of the data's standard deviation` +
+        (isNoisy
+          ? ', with a band of one standard error of the derivative. Where the band is as wide as the curve is tall, the entry adds noise that looks like information.'
+          : '. The derivatives came without realisations, so that their noise is not known.') +
+        (left > 0 ? ` ${String(left)} nuisance parameters are not drawn.` : ''),
     });
   });
 }
 
-function chunks<T>(values: readonly T[], size: number): readonly (readonly T[])[] {
-  return Array.from({ length: Math.ceil(values.length / size) }, (_, k) => values.slice(k * size, (k + 1) * size));
-}
-
 function pointsOf({ vector }: Block, parameter: string): readonly Point[] {
-  const { value, standardError } = vector.derivatives[parameter]!;
-  return vector.values.map((at, i) => {
+  const derivative = vector.derivatives[parameter];
+  if (derivative === undefined) return [];
+  return vector.values.flatMap((at, i) => {
     const deviation = vector.standardDeviation[i]!;
-    const middle = value[i]! / deviation;
-    const error = (standardError?.[i] ?? 0) / deviation;
-    return { at, value: middle, low: middle - error, high: middle + error };
+    if (!(deviation > 0)) return [];
+    const middle = derivative.value[i]! / deviation;
+    const error = (derivative.standardError?.[i] ?? 0) / deviation;
+    return [{ at, value: middle, low: middle - error, high: middle + error }];
   });
 }
 
-function panel(results: Results, drawing: Drawing, parameter: string, block: Block, width: number, height: number): Element {
+/** One range for all blocks, so that they can be compared; zero is always in it. */
+function rangeOf(points: readonly Point[]): [number, number] {
+  const [low, high] = [Math.min(0, ...points.map((point) => point.low)), Math.max(0, ...points.map((point) => point.high))];
+  const room = high > low ? 0.06 * (high - low) : 1;
+  return [low - room, high + room];
+}
+
+function panel(drawing: Drawing, parameter: string, block: Block, domain: [number, number], { width, height, isLowest }: Place): Element {
   const { document, plot } = drawing;
   const points = pointsOf(block, parameter);
   const { colour } = lookOf(0);
-  const { vector } = block;
   return plot.plot({
     document,
     width,
     height,
-    marginLeft: 50,
-    marginRight: 10,
-    marginTop: 22,
-    marginBottom: 40,
-    x: coordinateScale(vector),
-    y: { label: null, ticks: 4, tickFormat: tick, nice: true },
+    marginLeft: 48,
+    marginRight: 18,
+    marginTop: 8,
+    marginBottom: isLowest ? 46 : 20,
+    x: coordinateScale(block.vector),
+    y: { domain },
     marks: [
-      ...coordinateAxis(drawing, vector),
-      plot.ruleY([0], { stroke: quiet.light, strokeDasharray: '3 3' }),
+      coordinateAxis(drawing, block.vector, isLowest),
+      verticalAxis(drawing, { ticks: linearTicks(domain[0], domain[1], 4), label: null }),
+      plot.ruleY([0], { stroke: quiet.light, strokeWidth: 1 }),
       plot.areaY(points, { x: 'at', y1: 'low', y2: 'high', fill: colour, fillOpacity: 0.22 }),
-      plot.line(points, { x: 'at', y: 'value', stroke: colour, strokeWidth: 1.6 }),
-      plot.text([`${parameterLabel(results, parameter)}  ${shortened(titleOf(block), 18)}`], { frameAnchor: 'top', dy: -14, fontWeight: 'bold', fontSize: 11 }),
+      plot.line(points, { x: 'at', y: 'value', stroke: colour, strokeWidth: 1.7 }),
     ],
   });
 }
@@ -91,7 +114,9 @@ function panel(results: Results, drawing: Drawing, parameter: string, block: Blo
 function describe(results: Results, label: string, blocks: readonly Block[]): string {
   const sentences = results.parameters.map(({ name }) => {
     const all = blocks.flatMap((block) => pointsOf(block, name));
-    const largest = all.reduce((best, point) => (Math.abs(point.value) > Math.abs(best.value) ? point : best), all[0]!);
+    const [first] = all;
+    if (first === undefined) return `${parameterName(results, name)}: no response.`;
+    const largest = all.reduce((best, point) => (Math.abs(point.value) > Math.abs(best.value) ? point : best), first);
     const loud = all.filter(({ value, high }) => Math.abs(value) < high - value).length;
     return `${parameterName(results, name)}: largest response ${largest.value.toPrecision(2)} standard deviations a unit, at ${tick(largest.at)}; ${String(loud)} of ${String(all.length)} entries are below their own noise.`;
   });

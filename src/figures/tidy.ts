@@ -1,4 +1,4 @@
-import { marks } from './glyphs.js';
+import { marks, shiftedSize } from './glyphs.js';
 
 /** Two decimals of a pixel are more than a printer shows. */
 const decimals = 2;
@@ -51,9 +51,6 @@ function renumberIds(svg: Element, name: string): void {
   }
 }
 
-/** Size of sub- and superscripts. */
-const smaller = 0.75;
-
 /** Text with marks becomes spans: smaller, and lower or higher by a third of the letter. */
 function shiftMarks(element: Element): void {
   for (const node of [...element.childNodes]) {
@@ -66,9 +63,9 @@ function shiftMarks(element: Element): void {
       if (run === '') continue;
       const span = element.ownerDocument.createElementNS('http://www.w3.org/2000/svg', 'tspan');
       // An em of the span is its own size, and spans off the line are smaller.
-      const size = target === 0 ? 1 : smaller;
+      const size = target === 0 ? 1 : shiftedSize;
       if (target !== shift) span.setAttribute('dy', `${String(Number(((target - shift) / size).toFixed(2)))}em`);
-      if (target !== 0) span.setAttribute('font-size', `${String(100 * smaller)}%`);
+      if (target !== 0) span.setAttribute('font-size', `${String(100 * shiftedSize)}%`);
       span.textContent = run;
       element.insertBefore(span, node);
       shift = target;

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { cellPaths } from '../../src/figures/data-correlation.js';
-import { gainRows } from '../../src/figures/gains.js';
+import { arrangeGains } from '../../src/figures/gain-rows.js';
 import { glyphs, marks, plainText } from '../../src/figures/glyphs.js';
 import { logTicks } from '../../src/figures/log-ticks.js';
 import { lookOf } from '../../src/figures/palette.js';
@@ -57,7 +57,7 @@ it('twelve combinations look different from one another', () => {
 });
 
 it('the rows of the gains are every parameter in every added combination, in order, from top to bottom', () => {
-  const rows = gainRows(drawnResults({ parameters: 2, added: 2 }), 'fixed');
+  const { rows } = arrangeGains(drawnResults({ parameters: 2, added: 2 }), 'fixed', 0);
   expect(rows.map(({ parameter, combination }) => `${parameter} ${combination}`)).toEqual(['p0 joint0', 'p0 joint1', 'p1 joint0', 'p1 joint1']);
   expect(rows.every(({ place }, k) => k === 0 || place > rows[k - 1]!.place)).toBe(true);
 });
@@ -68,5 +68,5 @@ it('cells of one strength are one path, and cells near zero are left out', () =>
     [0.01, 1],
   ]);
   expect([...paths.keys()]).toEqual([20]);
-  expect(paths.get(20)).toBe('M0,0h309v309H0zM309,309h309v309H309z');
+  expect(paths.get(20)).toBe('M0,0h268v268H0zM268,268h268v268H268z');
 });
