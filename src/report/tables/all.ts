@@ -1,3 +1,4 @@
+import { areas, attribution, directions, oneFixed } from './attribution.js';
 import { budget } from './budget.js';
 import { checks } from './checks.js';
 import { claims } from './claims.js';
@@ -13,10 +14,13 @@ import type { CombinationTableMaker, TableMaker } from './table.js';
 import { gainViews, statuses, verdicts, views } from './views.js';
 
 export const tableMakers: Readonly<Record<string, TableMaker>> = {
+  areas,
+  attribution,
   budget,
   checks,
   claims,
   combinations,
+  directions,
   errors,
   'errors-nuisance': nuisanceErrors,
   'global-correlations': globalCorrelations,
@@ -24,6 +28,7 @@ export const tableMakers: Readonly<Record<string, TableMaker>> = {
   'improvements-fixed': fixedImprovements,
   'improvements-nuisance': nuisanceImprovements,
   inputs,
+  'one-fixed': oneFixed,
   parameters,
   responses,
   runs,

@@ -1,3 +1,4 @@
+import { attributionLead, throughNoise } from './attribution.js';
 import { checkLead } from './checks.js';
 import { convergenceLead } from './convergence.js';
 import { degeneracyLead } from './degeneracies.js';
@@ -11,6 +12,7 @@ import { scaleLead } from './scale.js';
 import type { CombinationSentenceMaker, SentenceMaker } from './sentence-maker.js';
 
 export const sentenceMakers: Readonly<Record<string, SentenceMaker>> = {
+  attribution: attributionLead,
   byline,
   checks: checkLead,
   claims: verdictList,
@@ -25,6 +27,7 @@ export const sentenceMakers: Readonly<Record<string, SentenceMaker>> = {
   provenance: provenanceLead,
   responses: responseLead,
   scale: scaleLead,
+  'through-noise': throughNoise,
 };
 
 /** Sentences that stand inside `:::each`. */

@@ -1,4 +1,5 @@
 import type { Results, Status } from '../../results/schema.js';
+import { attributionState } from './attribution.js';
 import { checkState } from './checks.js';
 import { degeneracyState } from './degeneracies.js';
 import { claimState } from './glance.js';
@@ -10,6 +11,7 @@ export const sectionStates: Readonly<Record<string, (results: Results) => string
   'at-a-glance': claimState,
   'forecast-errors': (results) => quotableState(targetErrors(results)),
   improvement: (results) => quotableState(targetGains(results)),
+  attribution: attributionState,
   responses: (results) => counted(Object.values(results.vectors).reduce((sum, blocks) => sum + Object.keys(blocks).length, 0), 'block'),
   convergence: (results) => openState([...targetErrors(results), ...targetGains(results)].map(({ estimate }) => estimate.status)),
   scale: (results) => counted(Math.max(0, ...Object.values(results.scan).map(({ at }) => at.length)), 'cut'),
