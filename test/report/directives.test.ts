@@ -21,7 +21,7 @@ function made(lines: string, results = smallResults()): string {
 describe('a template that cannot be used is refused with its place', () => {
   it.each([
     ['an unknown directive', '::figur{name=gains}', 'templates/only.md:3: there is no directive "figur"; there are contents, csv, each, figure, footer, notes, section, see, sentence, table, value'],
-    ['an unknown name', 'words\n\n::sentence{name=glans}', /^templates\/only\.md:5: there is no sentence "glans"; there are byline, checks, /],
+    ['an unknown name', 'words\n\n::sentence{name=glans}', /^templates\/only\.md:5: there is no sentence "glans"; there are attribution, byline, checks, /],
     ['a missing attribute', '::table', 'templates/only.md:3: "table" needs the attribute "name"'],
     ['an unknown attribute', '::table{name=errors size=3}', 'templates/only.md:3: "table" has no attribute "size"; it has name'],
     ['a directive in the wrong form', ':::table{name=errors}\n:::', 'templates/only.md:3: "table" is written with two colons, on a line of its own'],

@@ -15,6 +15,7 @@ const sectionTitles = [
   'At a glance',
   'Forecast errors',
   'Improvement over the baseline',
+  'Where the gain comes from',
   'Responses',
   'Is it converged?',
   'Dependence on scale',
