@@ -43,6 +43,6 @@ function claimLines({ claims, checks }: Results): readonly string[] {
   const warnings = checks.filter(({ level }) => level === 'warning').length;
   return [
     ...claims.map(({ id, verdict }) => `claim ${id}: ${verdict}`),
-    ...(warnings > 0 ? [`${String(warnings)} warnings: see the data checks in the report`] : []),
+    ...(warnings > 0 ? [`${String(warnings)} ${warnings === 1 ? 'warning' : 'warnings'}: see the data checks in the report`] : []),
   ];
 }
