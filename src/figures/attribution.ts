@@ -6,12 +6,15 @@ import { shownCombinations } from './combinations.js';
 import type { Drawing } from './drawing.js';
 import { compose, finish } from './drawing.js';
 import type { Figure } from './figure.js';
-import { parameterLabel, parameterName, parameterNames, shortened } from './labels.js';
-import { lookOf, quiet } from './palette.js';
+import { drawKey, quietItem } from './key.js';
+import { parameterName, parameterNames } from './labels.js';
+import { logTicks } from './log-ticks.js';
+import { lookOf } from './palette.js';
 import { pageWidth } from './panels.js';
+import { parameterHead, rowLabels } from './row-labels.js';
 
 /** One bar: the two parts of a marginalised gain, as natural logarithms. */
-export interface AttributionRow {
+interface AttributionRow {
   readonly parameter: string;
   readonly one: Shown;
   readonly place: number;
@@ -21,23 +24,30 @@ export interface AttributionRow {
 
 const rowHeight = 24;
 const gap = 14;
-const left = 300;
-const top = 56;
+const marginTop = 14;
 
 /** Sharper response and broken degeneracies of every gain on a target parameter, as stacked bars on a logarithmic axis. */
 export function attribution(results: Results, drawing: Drawing): readonly Figure[] {
-  const rows = attributionRows(results);
+  const labels = rowLabels(results, Object.values(results.combinations).map(({ label }) => label));
+  const rows = attributionRows(results, labels.headHeight);
   if (rows.length === 0) return [];
-  const height = top + rows[rows.length - 1]!.place + 60;
+  const key = drawKey(drawing, [
+    quietItem('sharper response (fixed gain)', { line: { width: 9 } }),
+    quietItem('degeneracies that break', { band: true }),
+    { text: 'marginalised gain: both together', sample: { colour: 'currentColor', symbol: { name: 'tick', filled: false } } },
+  ]);
+  const top = key.height + 12;
+  const end = rows[rows.length - 1]!.place + rowHeight / 2;
   const heads = rows.filter(({ parameter }, k) => rows[k - 1]?.parameter !== parameter);
   const notes = [
-    { x: left, y: 20, text: '■ sharper response (fixed gain)' },
-    { x: left + 220, y: 20, text: '□ degeneracies that break', colour: quiet.light },
-    { x: left, y: 38, text: '| marginalised gain: both together', colour: quiet.light },
-    ...heads.map((row) => ({ x: 12, y: top + row.place + 4, text: shortened(parameterLabel(results, row.parameter), 24), weight: 'bold' as const, size: 14 })),
-    ...rows.map((row) => ({ x: left - 12, y: top + row.place + 4, text: shortened(row.one.label, 30), anchor: 'end' as const, colour: lookOf(row.one.look).colour })),
+    ...heads.map((row) => parameterHead(labels, row.parameter, top + marginTop + row.place - labels.headHeight)),
+    ...rows.map((row) => ({ x: labels.left - 12, y: top + marginTop + row.place + 4, text: labels.short.get(row.one.label)!, anchor: 'end' as const, colour: lookOf(row.one.look).colour })),
   ];
-  const svg = compose(drawing, { width: pageWidth, height, panels: [{ svg: bars(drawing, rows, height), x: 0, y: 0 }], notes });
+  const panels = [
+    { svg: key.svg, x: 0, y: 6 },
+    { svg: bars(drawing, rows, labels.left, end), x: 0, y: top },
+  ];
+  const svg = compose(drawing, { width: pageWidth, height: top + marginTop + end + 48, panels, notes });
   return [
     finish(svg, {
       name: 'attribution',
@@ -50,40 +60,44 @@ export function attribution(results: Results, drawing: Drawing): readonly Figure
 }
 
 /** Rows from top to bottom; gains whose parts do not exist are left out, as the table says. */
-export function attributionRows(results: Results): readonly AttributionRow[] {
-  let place = 0;
-  return parameterNames(results, 'target').flatMap((parameter, k) => {
-    if (k > 0) place += gap;
-    return shownCombinations(results).flatMap((one) => {
+export function attributionRows(results: Results, headHeight: number): readonly AttributionRow[] {
+  let place = rowHeight / 2 - gap - rowHeight;
+  return parameterNames(results, 'target').flatMap((parameter) => {
+    const own = shownCombinations(results).flatMap((one) => {
       const shares = results.attribution?.[one.name]?.parameters[parameter]?.shares ?? null;
-      if (shares === null) return [];
+      return shares === null ? [] : [{ parameter, one, response: shares.response, degeneracy: shares.degeneracy }];
+    });
+    if (own.length > 0) place += gap + headHeight;
+    return own.map((row) => {
       place += rowHeight;
-      return [{ parameter, one, place, response: shares.response, degeneracy: shares.degeneracy }];
+      return { ...row, place };
     });
   });
 }
 
-function bars({ document, plot, ...rest }: Drawing, rows: readonly AttributionRow[], height: number): Element {
+function bars(drawing: Drawing, rows: readonly AttributionRow[], left: number, height: number): Element {
+  const { document, plot } = drawing;
+  const right = 24;
   const ends = rows.flatMap(({ response, degeneracy }) => [0, response, response + degeneracy]);
   const domain: [number, number] = [Math.min(...ends) - 0.05, Math.max(...ends, 0.1) + 0.05];
-  const factors = [0.5, 0.6, 0.7, 0.8, 0.9, 1, 1.1, 1.2, 1.3, 1.4, 1.5, 1.7, 2, 2.5, 3, 4, 5, 7, 10].filter((factor) => Math.log(factor) >= domain[0] && Math.log(factor) <= domain[1]);
+  const ticks = logTicks([Math.exp(domain[0]), Math.exp(domain[1])], Math.floor((pageWidth - left - right) / 46)).map(Math.log);
   const colour = (row: AttributionRow): string => lookOf(row.one.look).colour;
   return plot.plot({
     document,
     width: pageWidth,
-    height,
+    height: marginTop + height + 48,
     marginLeft: left,
-    marginRight: 24,
-    marginTop: top,
-    marginBottom: 46,
+    marginRight: right,
+    marginTop,
+    marginBottom: 48,
     x: { domain },
-    y: { domain: [0, rows[rows.length - 1]!.place + rowHeight / 2], range: [top, top + rows[rows.length - 1]!.place + rowHeight / 2], axis: null },
+    y: { domain: [0, height], range: [marginTop, marginTop + height], axis: null },
     marks: [
-      horizontalAxis({ document, plot, ...rest }, { ticks: factors.map(Math.log), label: 'gain (factor)', format: (log) => String(Number(Math.exp(log).toPrecision(2))) }),
-      plot.ruleX([0], { stroke: quiet.light, strokeDasharray: '4 3' }),
+      horizontalAxis(drawing, { ticks, label: 'gain: error of the baseline / error of the combination', format: (log) => String(Number(Math.exp(log).toPrecision(3))) }),
       plot.rect(rows, { x1: () => 0, x2: 'response', y1: (row: AttributionRow) => row.place - 8, y2: (row: AttributionRow) => row.place + 1, fill: colour }),
       plot.rect(rows, { x1: 'response', x2: (row: AttributionRow) => row.response + row.degeneracy, y1: (row: AttributionRow) => row.place, y2: (row: AttributionRow) => row.place + 8, stroke: colour, fill: colour, fillOpacity: 0.12 }),
-      plot.ruleX(rows, { x: (row: AttributionRow) => row.response + row.degeneracy, y1: (row: AttributionRow) => row.place - 10, y2: (row: AttributionRow) => row.place + 10, stroke: 'currentColor', strokeWidth: 1.6 }),
+      plot.ruleX([0], { stroke: 'currentColor', strokeWidth: 1.2 }),
+      plot.ruleX(rows, { x: (row: AttributionRow) => row.response + row.degeneracy, y1: (row: AttributionRow) => row.place - 10, y2: (row: AttributionRow) => row.place + 10, stroke: 'currentColor', strokeWidth: 1.8 }),
     ],
   });
 }

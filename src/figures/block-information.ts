@@ -5,9 +5,10 @@ import { shownCombinations } from './combinations.js';
 import type { Drawing } from './drawing.js';
 import { compose, finish } from './drawing.js';
 import type { Figure } from './figure.js';
-import { blockLabel, parameterLabel, parameterName, parameterNames, shortened } from './labels.js';
+import { blockLabel, parameterLabel, parameterName, parameterNames } from './labels.js';
 import { lookOf, quiet } from './palette.js';
 import { pageWidth } from './panels.js';
+import { fitted, fittedApart } from './text-width.js';
 
 interface Cell {
   readonly row: number;
@@ -20,7 +21,9 @@ const rowHeight = 24;
 
 /** How much each marginalised error grows without a block of the data vector: one panel a combination. */
 export function blockInformation(results: Results, drawing: Drawing): readonly Figure[] {
-  const shown = shownCombinations(results).filter(({ name }) => (results.attribution?.[name]?.blocks.length ?? 0) > 1);
+  const all = shownCombinations(results).filter(({ name }) => (results.attribution?.[name]?.blocks.length ?? 0) > 1);
+  const shown = all.filter(({ name }) => results.attribution![name]!.blocks.some(({ errorRatio }) => Object.values(errorRatio).some((ratio) => ratio !== null)));
+  const missing = all.filter((one) => !shown.includes(one));
   if (shown.length === 0) return [];
   let y = 26;
   const panels = shown.map((one) => {
@@ -37,9 +40,18 @@ export function blockInformation(results: Results, drawing: Drawing): readonly F
       title: 'Information by block',
       alternative: shown.map((one) => describe(results, one)).join(' '),
       caption:
-        'How much each marginalised error (corrected) grows when one block is left out. A number below 1 is noise: leaving data out cannot help, so it shows how well the corrected values are known.',
+        'How much each marginalised error (corrected) grows when one block is left out. A number below 1 is noise: leaving data out cannot help, so it shows how well the corrected values are known.' +
+        (missing.length > 0 ? ` Cannot be told: ${missing.map(({ label }) => label).join(', ')}.` : ''),
     }),
   ];
+}
+
+/** More columns than this leave no room for a number: targets only. */
+const mostColumns = 18;
+
+function drawnParameters(results: Results): readonly string[] {
+  const targets = parameterNames(results, 'target');
+  return results.parameters.length <= mostColumns || targets.length === 0 ? parameterNames(results) : targets;
 }
 
 function heightOf(results: Results, { name }: Shown): number {
@@ -48,14 +60,17 @@ function heightOf(results: Results, { name }: Shown): number {
 
 function panel(results: Results, { document, plot }: Drawing, one: Shown): Element {
   const { blocks } = results.attribution![one.name]!;
-  const parameters = parameterNames(results);
+  const parameters = drawnParameters(results);
   const cells: Cell[] = blocks.flatMap(({ errorRatio }, row) => parameters.map((name, column) => ({ row, column, ratio: errorRatio[name] ?? null })));
   const domain = (count: number): number[] => Array.from({ length: count }, (_, k) => k);
-  const rowLabel = (k: number): string => {
-    const { probe, block } = blocks[k]!;
-    const label = results.vectors[probe]?.[block]?.label ?? block;
-    return shortened(`${results.probes[probe]?.label ?? probe}: ${label === '' ? block : blockLabel(label)}`, 34);
-  };
+  const rowNames = fittedApart(
+    blocks.map(({ probe, block }) => {
+      const label = results.vectors[probe]?.[block]?.label ?? block;
+      return `${results.probes[probe]?.label ?? probe}: ${label === '' ? block : blockLabel(label)}`;
+    }),
+    left - 24,
+  );
+  const columnNames = fittedApart(parameters.map((name) => parameterLabel(results, name)), (pageWidth - left - 12) / parameters.length - 4);
   const { colour } = lookOf(one.look);
   return plot.plot({
     document,
@@ -65,13 +80,13 @@ function panel(results: Results, { document, plot }: Drawing, one: Shown): Eleme
     marginRight: 12,
     marginTop: 40,
     marginBottom: 10,
-    x: { type: 'band', domain: domain(parameters.length), axis: 'top', tickSize: 0, label: null, tickFormat: (k: number) => shortened(parameterLabel(results, parameters[k] ?? ''), 9), padding: 0.06 },
-    y: { type: 'band', domain: domain(blocks.length), tickSize: 0, label: null, tickFormat: rowLabel, padding: 0.08 },
+    x: { type: 'band', domain: domain(parameters.length), axis: 'top', tickSize: 0, label: null, tickFormat: (k: number) => columnNames[k] ?? '', padding: 0.06 },
+    y: { type: 'band', domain: domain(blocks.length), tickSize: 0, label: null, tickFormat: (k: number) => rowNames[k] ?? '', padding: 0.08 },
     opacity: { type: 'identity' },
     marks: [
-      plot.text([shortened(one.label, 60)], { frameAnchor: 'top', dy: -34, fontWeight: 'bold', fill: colour }),
+      plot.text([fitted(one.label, pageWidth - left, 12, true)], { frameAnchor: 'top', dy: -34, fontWeight: 'bold', fill: colour }),
       plot.cell(cells, { x: 'column', y: 'row', fill: colour, fillOpacity: ({ ratio }: Cell) => strength(ratio) }),
-      plot.text(cells, { x: 'column', y: 'row', fontSize: parameters.length > 14 ? 9 : 11, text: ({ ratio }: Cell) => (ratio === null ? '–' : significant(ratio, 3)) }),
+      plot.text(cells, { x: 'column', y: 'row', fontSize: 11, text: ({ ratio }: Cell) => (ratio === null ? '–' : significant(ratio, 3)) }),
     ],
   });
 }

@@ -9,24 +9,18 @@ import { arrangeGains } from './gain-rows.js';
 import { gainWords } from './gain-words.js';
 import type { KeyItem } from './key.js';
 import { drawKey, quietItem } from './key.js';
-import { parameterLabel } from './labels.js';
 import { logTicks } from './log-ticks.js';
 import { faint, lookOf, quiet, warning } from './palette.js';
 import { pageWidth } from './panels.js';
 import { roomBeside } from './room.js';
-import { fitted, fittedApart, textWidth } from './text-width.js';
+import type { RowLabels } from './row-labels.js';
+import { parameterHead, rowLabels } from './row-labels.js';
+import { textWidth } from './text-width.js';
 
-/** Columns: parameter, combination, plot, value with interval, status. */
-interface Columns {
-  /** Room for the parameter beside its rows; null puts it over them. */
-  readonly parameter: number | null;
-  readonly left: number;
-  readonly right: number;
-}
-
+/** Columns right of the plot: value with interval, and status. */
 const valueWidth = 150;
 const statusWidth = 96;
-const widestLabel = 210;
+const right = valueWidth + statusWidth;
 
 /** Raw, sham and corrected gain of every parameter and combination over the baseline. */
 export function gains(results: Results, drawing: Drawing): readonly Figure[] {
@@ -34,24 +28,17 @@ export function gains(results: Results, drawing: Drawing): readonly Figure[] {
   return (['marginalised', 'fixed'] as const).map((kind) => gainFigure(results, drawing, kind));
 }
 
-function columnsFor(results: Results): Columns {
-  const names = Math.max(...results.parameters.map(({ name }) => textWidth(parameterLabel(results, name), 15, true)));
-  const labels = Object.keys(results.improvements).map((name) => textWidth(results.combinations[name]?.label ?? name));
-  const parameter = names <= 72 ? names + 14 : null;
-  return { parameter, left: 12 + (parameter ?? 10) + Math.min(widestLabel, Math.max(...labels)) + 14, right: valueWidth + statusWidth };
-}
-
 function gainFigure(results: Results, drawing: Drawing, kind: Kind): Figure {
-  const columns = columnsFor(results);
-  const arranged = arrangeGains(results, kind, columns.parameter === null ? 24 : 0);
+  const labels = rowLabels(results, Object.keys(results.improvements).map((name) => results.combinations[name]?.label ?? name));
+  const arranged = arrangeGains(results, kind, labels.headHeight);
   const key = drawKey(drawing, keyItems());
   const top = key.height + 46;
   const height = top + arranged.height + 48;
   const panels = [
     { svg: key.svg, x: 0, y: 6 },
-    { svg: drawRows(drawing, arranged.rows, arranged.heads, columns, arranged.height), x: 0, y: top - marginTop },
+    { svg: drawRows(drawing, arranged.rows, arranged.heads, labels.left, arranged.height), x: 0, y: top - marginTop },
   ];
-  const notes = notesOf(results, arranged.rows, arranged.heads, columns).map((note) => ({ ...note, y: note.y + top }));
+  const notes = notesOf(arranged.rows, arranged.heads, labels).map((note) => ({ ...note, y: note.y + top }));
   const svg = compose(drawing, { width: pageWidth, height, panels, notes });
   return finish(svg, gainWords(results, kind, arranged.rows, arranged.leftOut));
 }
@@ -64,9 +51,8 @@ function keyItems(): readonly KeyItem[] {
   ];
 }
 
-function notesOf(results: Results, rows: readonly GainRow[], heads: readonly GainHead[], { left, right }: Columns): readonly Note[] {
-  const short = fittedApart([...new Set(rows.map(({ label }) => label))], Math.min(widestLabel, left - 30));
-  const labels = new Map([...new Set(rows.map(({ label }) => label))].map((label, k) => [label, short[k]!]));
+function notesOf(rows: readonly GainRow[], heads: readonly GainHead[], labels: RowLabels): readonly Note[] {
+  const { left, short } = labels;
   const values = pageWidth - right + 14;
   return [
     { x: values, y: -16, text: 'corrected', colour: quiet.light },
@@ -74,10 +60,10 @@ function notesOf(results: Results, rows: readonly GainRow[], heads: readonly Gai
     ...heads.map(({ kind, parameter, place }): Note =>
       kind === 'nuisance'
         ? { x: 12, y: place, text: 'nuisance parameters', colour: quiet.light, style: 'italic' }
-        : { x: 12, y: place + 5, text: fitted(parameterLabel(results, parameter), pageWidth / 2, 15, true), weight: 'bold', size: 15 },
+        : parameterHead(labels, parameter, place),
     ),
     ...rows.flatMap(({ label, look, place, gain }): readonly Note[] => [
-      { x: left - 12, y: place + 4, text: labels.get(label)!, anchor: 'end', colour: lookOf(look).colour },
+      { x: left - 12, y: place + 4, text: short.get(label)!, anchor: 'end', colour: lookOf(look).colour },
       ...valueNotes(gain, values, place + 4),
       { x: pageWidth - statusWidth + 2, y: place + 4, text: gain.status, colour: quiet.light },
     ]),
@@ -106,7 +92,7 @@ const marginTop = 24;
 /** Pixels of "cannot tell". */
 const wordsWidth = 72;
 
-function drawRows(drawing: Drawing, rows: readonly GainRow[], heads: readonly GainHead[], { left, right }: Columns, height: number): Element {
+function drawRows(drawing: Drawing, rows: readonly GainRow[], heads: readonly GainHead[], left: number, height: number): Element {
   const { document, plot } = drawing;
   const domain = gainDomain(rows);
   const pixels = pageWidth - left - right;

@@ -4,7 +4,7 @@ import { lookOf, quiet } from './palette.js';
 import { pageWidth } from './panels.js';
 import { fitted, textWidth } from './text-width.js';
 
-type Symbol = ReturnType<typeof lookOf>['symbol'] | 'times' | 'plus';
+type Symbol = ReturnType<typeof lookOf>['symbol'] | 'times' | 'plus' | 'tick';
 
 /** What stands before a word of the key, drawn as it is drawn in the figure. */
 export interface Sample {
@@ -80,14 +80,15 @@ function plotKey({ document, plot }: Drawing, items: readonly Placed[], width: n
       ...lines.map((item) => plot.ruleY([item], { y: 'y', x1: start, x2: end, stroke: item.sample.colour, strokeWidth: item.sample.line!.width, strokeDasharray: dashOf(item.sample.line!.dash) })),
       plot.ruleY(items.filter(({ sample }) => sample.within === true), { y: 'y', x1: (item: Placed) => item.x + 6, x2: (item: Placed) => item.x + sampleWidth - 6, stroke: colour, strokeWidth: 5 }),
       ...([true, false] as const).map((filled) =>
-        plot.dot(items.filter(({ sample }) => sample.symbol?.filled === filled), {
+        plot.dot(items.filter(({ sample }) => sample.symbol?.filled === filled && sample.symbol.name !== 'tick'), {
           x: middle,
           y: 'y',
           r: 4.5,
-          symbol: ({ sample }: Placed) => sample.symbol!.name,
+          symbol: ({ sample }: Placed) => sample.symbol!.name as Exclude<Symbol, 'tick'>,
           ...(filled ? { fill: colour, stroke: 'none' } : { stroke: colour, strokeWidth: 1.7 }),
         }),
       ),
+      plot.ruleX(items.filter(({ sample }) => sample.symbol?.name === 'tick'), { x: middle, y1: (item: Placed) => item.y - 7, y2: (item: Placed) => item.y + 7, stroke: colour, strokeWidth: 1.8 }),
       ...items.map((item) => plot.text([item], { x: end, y: 'y', dx: 6, text: 'text', textAnchor: 'start', ...(item.coloured === true ? { fill: item.sample.colour, fontWeight: 'bold' } : {}) })),
     ],
   });

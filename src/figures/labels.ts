@@ -31,12 +31,6 @@ export function blockLabel(label: string): string {
   return isTex(label) || label.includes('_') ? glyphs(label) : label;
 }
 
-/** Text cut to about a number of characters; the table has the whole of it. */
-export function shortened(text: string, most: number): string {
-  const letters = Array.from(text);
-  return letters.length <= most ? text : `${letters.slice(0, most - 1).join('')}…`;
-}
-
 /** Targets, then nuisance parameters, as the results order them. */
 export function parameterNames(results: Results, role?: 'target' | 'nuisance'): readonly string[] {
   return results.parameters.filter((parameter) => role === undefined || parameter.role === role).map(({ name }) => name);

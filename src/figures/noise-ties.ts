@@ -4,9 +4,13 @@ import { shownCombinations } from './combinations.js';
 import type { Drawing } from './drawing.js';
 import { compose, finish } from './drawing.js';
 import type { Figure } from './figure.js';
-import { axisLabel, shortened } from './labels.js';
+import { verticalAxis } from './axes.js';
+import { coordinateAxis, coordinateScale } from './coordinate.js';
+import { combinationItems, drawKey, quietItem } from './key.js';
+import { blockLabel } from './labels.js';
 import { lookOf, quiet } from './palette.js';
-import { combinationKey, gridFor, gridHeight, keyHeight, pageWidth, placed, tick } from './panels.js';
+import { gridFor, gridHeight, pageWidth, placed, tick } from './panels.js';
+import { wrapped } from './text-width.js';
 
 interface Point {
   readonly at: number;
@@ -30,10 +34,14 @@ interface Panel {
 export function noiseTies(results: Results, drawing: Drawing): readonly Figure[] {
   const panels = panelsOf(results);
   if (panels.length === 0) return [];
-  const notes = combinationKey(panels[0]!.lines);
-  const grid = gridFor(panels.length, 230, keyHeight(notes), 2);
+  const seen = new Map(panels.flatMap(({ lines }) => lines.map((line) => [line.look, line] as const)));
+  const key = drawKey(drawing, [
+    ...combinationItems([...seen.values()], () => true).map((item) => ({ ...item, sample: { ...item.sample, line: { width: 1.8 } } })),
+    quietItem('by chance', { line: { width: 1.2, dash: '3 3' } }),
+  ]);
+  const grid = gridFor(panels.length, 236, key.height + 16, 2);
   const svgs = panels.map((one) => draw(results, drawing, one, grid.width, grid.height));
-  const svg = compose(drawing, { width: pageWidth, height: gridHeight(grid, panels.length), panels: placed(grid, svgs), notes });
+  const svg = compose(drawing, { width: pageWidth, height: gridHeight(grid, panels.length), panels: [{ svg: key.svg, x: 0, y: 6 }, ...placed(grid, svgs)] });
   return [
     finish(svg, {
       name: 'noise-ties',
@@ -62,30 +70,35 @@ function panelsOf(results: Results): readonly Panel[] {
   return [...blocks.values()];
 }
 
-function draw(results: Results, { document, plot }: Drawing, { probe, block, lines }: Panel, width: number, height: number): Element {
+function draw(results: Results, drawing: Drawing, { probe, block, lines }: Panel, width: number, height: number): Element {
+  const { document, plot } = drawing;
   const vector = results.vectors[probe]?.[block];
-  const label = results.probes[probe]?.label ?? probe;
+  const along = { values: lines.flatMap(({ points }) => points.map(({ at }) => at)), coordinate: vector?.coordinate ?? null, unit: vector?.unit ?? '' };
+  const label = vector === undefined || vector.label === '' ? block : blockLabel(vector.label);
+  const title = wrapped(`${results.probes[probe]?.label ?? probe}, ${label}`, width - 40, 2, 12, true);
   return plot.plot({
     document,
     width,
     height,
-    marginLeft: 48,
-    marginRight: 14,
-    marginTop: 30,
+    marginLeft: 52,
+    marginRight: 20,
+    marginTop: 42,
     marginBottom: 44,
-    x: { label: axisLabel(vector?.coordinate ?? 'entry', vector?.unit ?? ''), labelAnchor: 'center', labelArrow: 'none', ticks: 5, tickFormat: tick },
-    y: { domain: [0, 1], label: 'share of the variance predicted', labelArrow: 'none', ticks: 5, tickFormat: tick },
+    x: coordinateScale(along),
+    y: { domain: [0, 1] },
     marks: [
-      plot.text([shortened(`${label}, ${block}`, Math.floor(width / 8))], { frameAnchor: 'top', dy: -18, dx: 60, fontWeight: 'bold' }),
+      coordinateAxis(drawing, along),
+      verticalAxis(drawing, { ticks: [0, 0.2, 0.4, 0.6, 0.8, 1], label: 'share predicted', isCentred: true }),
+      ...title.map((line, k) => plot.text([line], { frameAnchor: 'top', dx: -16, dy: -14 - 15 * (title.length - 1 - k), fontWeight: 'bold' })),
       ...lines.flatMap((line) => {
         const { colour, symbol } = lookOf(line.look);
         return [
-          ...(line.chance === null ? [] : [plot.ruleY([line.chance], { stroke: colour, strokeDasharray: '3 3', strokeOpacity: 0.8 })]),
-          plot.line(line.points, { x: 'at', y: 'share', stroke: colour, strokeWidth: 1.6 }),
-          plot.dot(line.points, { x: 'at', y: 'share', fill: colour, stroke: 'none', symbol, r: 3 }),
+          ...(line.chance === null ? [] : [plot.ruleY([line.chance], { stroke: colour, strokeDasharray: '3 3', strokeWidth: 1.2 })]),
+          plot.line(line.points, { x: 'at', y: 'share', stroke: colour, strokeWidth: 1.8 }),
+          plot.dot(line.points, { x: 'at', y: 'share', fill: colour, stroke: 'none', symbol, r: 3.2 }),
         ];
       }),
-      plot.ruleY([0], { stroke: quiet.light, strokeOpacity: 0.5 }),
+      plot.ruleY([0], { stroke: quiet.light }),
     ],
   });
 }

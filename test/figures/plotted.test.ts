@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { attributionRows } from '../../src/figures/attribution.js';
 import { outline } from '../../src/figures/ellipses.js';
 import { arrangeGains } from '../../src/figures/gain-rows.js';
 import { gainDomain } from '../../src/figures/gains.js';
@@ -32,6 +33,23 @@ describe('the rows of the gains', () => {
     // Half of the smallest mark to twice the largest, with 3 % of room.
     expect(low).toBeCloseTo(0.5 / 1.03, 12);
     expect(high).toBeCloseTo(4 * 1.03, 12);
+  });
+});
+
+describe('the rows of the attribution', () => {
+  it('hold both parts of every gain on a target that exists, from top to bottom', () => {
+    const rows = attributionRows(results, 0);
+    // Four targets; of four added combinations one is undetermined and one not assessable.
+    expect(rows.map(({ parameter, one }) => `${parameter} ${one.name}`)).toEqual(
+      ['omega_m', 'sigma_8', 'n_s', 'hubble'].flatMap((name) => [`${name} power_peaks`, `${name} everything`]),
+    );
+    for (const { parameter, one, response, degeneracy } of rows) {
+      const { marginalised, fixed } = results.improvements[one.name]![parameter]!;
+      // Logarithms of numbers near 1, added once: all but the last digits agree.
+      expect(response).toBeCloseTo(Math.log(fixed.corrected!), 12);
+      expect(response + degeneracy).toBeCloseTo(Math.log(marginalised.corrected!), 12);
+    }
+    expect(rows.every(({ place }, k) => k === 0 || place > rows[k - 1]!.place)).toBe(true);
   });
 });
 
