@@ -1,6 +1,7 @@
 import { attribution } from './attribution.js';
 import { blockInformation } from './block-information.js';
 import { convergence } from './convergence.js';
+import { covarianceConvergence } from './covariance-convergence.js';
 import { dataCorrelation } from './data-correlation.js';
 import { ellipses } from './ellipses.js';
 import { errors } from './errors.js';
@@ -19,6 +20,7 @@ export const figureMakers: Readonly<Record<string, FigureMaker>> = {
   responses,
   'mean-vectors': meanVectors,
   convergence,
+  'covariance-convergence': covarianceConvergence,
   scan,
   attribution,
   'noise-ties': noiseTies,
