@@ -16,14 +16,21 @@ import { lookOf, quiet, warning } from './palette.js';
 /** Most panels: beyond these the table serves better. */
 const mostPanels = 32;
 
+type Quantity = 'errors' | 'improvements';
+
 interface Case {
+  readonly quantity: Quantity;
   readonly parameter: string;
   readonly shown: Shown;
 }
 
-/** Raw and corrected errors against the number of derivative realisations, with the fit, its limit and the split estimate. */
+/** Raw and corrected errors, and gains, against the number of derivative realisations, with the limit of the fit and the split estimate. */
 export function convergence(results: Results, drawing: Drawing): readonly Figure[] {
-  const all = shownCombinations(results).filter(({ name }) => results.convergence[name] !== undefined);
+  return (['errors', 'improvements'] as const).flatMap((quantity) => convergenceOf(results, drawing, quantity));
+}
+
+function convergenceOf(results: Results, drawing: Drawing, quantity: Quantity): readonly Figure[] {
+  const all = shownCombinations(results).filter(({ name }) => (results.convergence[name]?.[quantity] ?? null) !== null);
   const targets = parameterNames(results, 'target');
   if (all.length === 0 || targets.length === 0) return [];
   const shown = all.slice(0, Math.max(1, Math.floor(mostPanels / targets.length)));
@@ -31,7 +38,7 @@ export function convergence(results: Results, drawing: Drawing): readonly Figure
   const key = drawKey(drawing, [
     quietItem('raw', { symbol: { name: 'circle', filled: false } }),
     quietItem('corrected; bars: scatter between disjoint blocks', { symbol: { name: 'circle', filled: true }, line: { width: 1.2 } }),
-    quietItem('fit to the raw, and its limit', { line: { width: 1.4, dash: '4 3' } }),
+    quietItem(quantity === 'errors' ? 'fit to the raw, and its limit' : 'ratio of the limits of the fits', { line: { width: 1.4, dash: '4 3' } }),
     quietItem('split estimate', { symbol: { name: 'diamond', filled: false } }),
   ]);
   const svg = composeTable(drawing, key, {
@@ -39,22 +46,36 @@ export function convergence(results: Results, drawing: Drawing): readonly Figure
     rows: parameters.map((name) => parameterLabel(results, name)),
     rowHeight: 122,
     foot: 26,
-    panel: (row, column, place) => panel(results, drawing, { parameter: parameters[row]!, shown: shown[column]! }, place),
+    panel: (row, column, place) => panel(results, drawing, { quantity, parameter: parameters[row]!, shown: shown[column]! }, place),
   });
   const left = all.length * targets.length - shown.length * parameters.length;
   const nuisance = results.parameters.length - targets.length;
   return [
     finish(svg, {
-      name: 'convergence',
-      title: 'Errors against the number of derivative realisations',
-      alternative: sentences(results, parameters.flatMap((parameter) => shown.map((one) => ({ parameter, shown: one })))),
+      ...words[quantity],
+      alternative: sentences(results, parameters.flatMap((parameter) => shown.map((one) => ({ quantity, parameter, shown: one })))),
       caption:
-        'Marginalised errors from disjoint blocks of derivative realisations. Raw errors (hollow) that still rise to the right are flattered by noise; corrected errors (filled) should be flat, and meet the limit of the fit and the split estimate.' +
+        words[quantity].caption +
         (nuisance > 0 ? ' Target parameters only.' : '') +
         (left > 0 ? ` ${String(left)} further pairs of a parameter and a combination are in the table.` : ''),
     }),
   ];
 }
+
+const words = {
+  errors: {
+    name: 'convergence',
+    title: 'Errors against the number of derivative realisations',
+    caption:
+      'Marginalised errors from disjoint blocks of derivative realisations. Raw errors (hollow) that still rise to the right are flattered by noise; corrected errors (filled) should be flat, and meet the limit of the fit and the split estimate.',
+  },
+  improvements: {
+    name: 'convergence-gains',
+    title: 'Gains against the number of derivative realisations',
+    caption:
+      'Marginalised gains over the baseline from the same blocks. Raw gains (hollow) that still fall to the right are flattered by noise; corrected gains (filled) should be flat, and meet the other two views.',
+  },
+} as const;
 
 interface BlockPoint {
   readonly n: number;
@@ -69,16 +90,20 @@ function blockPoints(counts: readonly number[], values: readonly (number | null)
   });
 }
 
+function estimateOf(results: Results, { quantity, parameter, shown }: Case) {
+  return quantity === 'errors' ? shown.result.errors[parameter]!.marginalised : results.improvements[shown.name]![parameter]!.marginalised;
+}
+
 /** Everything that a panel shows, and the range that holds it. */
-function contentsOf(results: Results, { parameter, shown }: Case) {
-  const found = results.convergence[shown.name]!;
-  const values = found.errors[parameter]!.marginalised;
-  const { split } = shown.result.errors[parameter]!.marginalised;
+function contentsOf(results: Results, one: Case) {
+  const found = results.convergence[one.shown.name]!;
+  const values = found[one.quantity]![one.parameter]!.marginalised;
+  const { split, limit: view } = estimateOf(results, one);
   const raw = blockPoints(found.realisations, values.raw, values.rawScatter);
   const corrected = blockPoints(found.realisations, values.corrected, values.correctedScatter);
   const [least, most] = [Math.min(...found.realisations), Math.max(...found.realisations)];
   const curve = values.fit === null ? [] : fittedCurve(values.fit, least, most);
-  const limit = values.fit === null ? [] : [values.fit.limit];
+  const limit = view === null ? [] : [view];
   const splits = split === null ? [] : [split];
   // A bar longer than the value itself must not set the scale.
   const points = [...raw, ...corrected].flatMap(({ value, scatter }) => [value + Math.min(scatter, value), Math.max(value - scatter, value / 2)]);
@@ -132,8 +157,10 @@ function fittedCurve({ limit, b }: { readonly limit: number; readonly b: number 
 
 function sentences(results: Results, cases: readonly Case[]): string {
   return cases
-    .map(({ parameter, shown: { label, result } }) => {
-      const { raw, corrected, limit, split, standardError, status } = result.errors[parameter]!.marginalised;
+    .map((one) => {
+      const { parameter, shown } = one;
+      const { label } = shown;
+      const { raw, corrected, limit, split, standardError, status } = estimateOf(results, one);
       const say = (value: number | null): string => (value === null ? 'none' : roundTo(value, standardError));
       return `${parameterName(results, parameter)}, ${label}: raw ${say(raw)}, corrected ${say(corrected)}, limit ${say(limit)}, split ${say(split)}; ${status}.`;
     })
