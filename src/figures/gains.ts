@@ -18,7 +18,7 @@ import { parameterHead, rowLabels } from './row-labels.js';
 import { textWidth } from './text-width.js';
 
 /** Columns right of the plot: value with interval, and status. */
-const valueWidth = 150;
+const valueWidth = 160;
 const statusWidth = 96;
 const right = valueWidth + statusWidth;
 
