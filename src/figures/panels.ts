@@ -1,5 +1,4 @@
-import type { Note, Panel } from './drawing.js';
-import { lookOf } from './palette.js';
+import type { Panel } from './drawing.js';
 
 /** Small multiples: equal panels in rows, with room above for a key. */
 export interface Grid {
@@ -29,30 +28,6 @@ export function placed(grid: Grid, svgs: readonly Element[]): readonly Panel[] {
 
 export function gridHeight(grid: Grid, count: number): number {
   return grid.top + Math.ceil(count / grid.columns) * grid.height;
-}
-
-const shapes: Readonly<Record<string, string>> = { circle: '●', square: '■', triangle: '▲', diamond: '◆', star: '★', cross: '✚' };
-
-/** The combinations with their colours and shapes, wrapped over lines from the top. */
-export function combinationKey(entries: readonly { readonly label: string; readonly look: number }[]): readonly Note[] {
-  let x = 12;
-  let y = 18;
-  return entries.map(({ label, look }) => {
-    const text = `${shapes[lookOf(look).symbol] ?? '●'} ${label}`;
-    const needed = 7.2 * Array.from(text).length + 24;
-    if (x > 12 && x + needed > pageWidth) {
-      x = 12;
-      y += 20;
-    }
-    const note: Note = { x, y, text, colour: lookOf(look).colour, weight: 'bold' };
-    x += needed;
-    return note;
-  });
-}
-
-/** Height that a key takes. */
-export function keyHeight(notes: readonly Note[]): number {
-  return Math.max(18, ...notes.map(({ y }) => y)) + 14;
 }
 
 /** Ticks in few digits, whatever the size. */
