@@ -11,7 +11,7 @@ const columns = [
   words('Parameter'),
   words('Combination'),
   numbers('Raw'),
-  numbers('Sham (noise alone)'),
+  numbers('Sham (16 % to 84 %)'),
   numbers('Corrected (68 % interval)'),
   words('Status'),
 ];
@@ -19,7 +19,7 @@ const columns = [
 export const improvements: TableMaker = (results) =>
   of(results, targets(results), 'marginalised', {
     id: 'improvements',
-    caption: say`Improvement of the marginalised errors: error of ${combinationLabel(results, results.study.baseline)} over error of the combination; above 1 is better.`,
+    caption: say`Improvement of the marginalised errors: error of ${combinationLabel(results, results.study.baseline)} over error of the combination; above 1 is better. Sham is what the noise of the added derivatives alone would show, with the range of two thirds of ${String(results.rules.shamDraws)} draws.`,
   });
 
 export const fixedImprovements: TableMaker = (results) =>
@@ -39,7 +39,7 @@ function of(results: Results, parameters: readonly string[], kind: Kind, head: P
     Object.entries(results.improvements).flatMap(([combination, found]) => {
       const gain = found[name]?.[kind];
       if (gain === undefined) return [];
-      return [[parameterLabel(results, name), combinationLabel(results, combination), raw(gain), sham(gain), corrected(gain), sign(gain.status)]];
+      return [[parameterLabel(results, name), combinationLabel(results, combination), raw(gain), shamWithRange(gain), corrected(gain), sign(gain.status)]];
     }),
   );
   return { ...head, columns, rows };
@@ -48,4 +48,9 @@ function of(results: Results, parameters: readonly string[], kind: Kind, head: P
 /** With the digits of the gain that it stands beside. */
 export function sham(gain: Improvement): string {
   return gain.sham === null ? 'none' : view(gain.sham, gain);
+}
+
+function shamWithRange(gain: Improvement): string {
+  const range = gain.shamInterval;
+  return range === null ? sham(gain) : `${sham(gain)} (${view(range[0], gain)} to ${view(range[1], gain)})`;
 }
