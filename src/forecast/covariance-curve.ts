@@ -1,4 +1,4 @@
-import type { RowSource } from '../arrays/rows.js';
+import type { Matrix, RowSource } from '../arrays/rows.js';
 import { cholesky, whiten } from '../linalg/cholesky.js';
 import { momentsOf } from '../linalg/gram.js';
 import { add } from '../linalg/small.js';
@@ -10,6 +10,7 @@ import type { Part } from './part.js';
 import { chosen } from './part.js';
 import { precisionFactor } from './precision.js';
 import { gather } from './realisations.js';
+import type { FiducialCovariance } from './suite.js';
 import { products } from './subset.js';
 
 /** Raw log errors with covariances from fewer fiducial realisations, each with its own precision factor. */
@@ -52,7 +53,7 @@ function fisherAt(part: Part, division: number) {
   const count = source === null ? realisations : source.rows;
   const entries = part.entries.length;
   if (count !== null && count <= entries + 2) return null;
-  const matrix = chosen(source === null ? covariance : momentsOf(source).covariance, part.picks);
+  const matrix = chosen(source === null ? covariance : thinned(part.covariance, source, division), part.picks);
   const factorisation = cholesky(matrix);
   if (factorisation.kind !== 'factor') return null;
   const derivatives = Float64Array.from(part.plainExact.data);
@@ -63,6 +64,17 @@ function fisherAt(part: Part, division: number) {
   whiten(factorisation.factor, { ...part.plainExact, data: derivatives });
   const scale = precisionFactor(count, entries) * part.volumeScale;
   return products(derivatives, derivatives, part.exact.rows, scale);
+}
+
+/** Covariances of fewer realisations, which every combination of a suite shares. */
+const known = new WeakMap<FiducialCovariance, Map<number, Matrix>>();
+
+function thinned(of: FiducialCovariance, source: RowSource, division: number): Matrix {
+  const all = known.get(of) ?? new Map<number, Matrix>();
+  known.set(of, all);
+  const found = all.get(division) ?? momentsOf(source).covariance;
+  all.set(division, found);
+  return found;
 }
 
 function every(source: RowSource, division: number): RowSource {

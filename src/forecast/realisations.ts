@@ -61,6 +61,24 @@ function consecutive(indices: Vector, start: number): number {
   return count;
 }
 
+/** Most numbers that are kept in memory rather than read again: 32 MB. */
+const mostKept = 4_000_000;
+
+/** Rows that are read once where they are few: several passes over a small file would open it as many times. */
+export function kept(source: RowSource): RowSource {
+  const { rows, columns, read } = source;
+  if (rows * columns > mostKept) return source;
+  let data: Float64Array | null = null;
+  return {
+    rows,
+    columns,
+    read: (start, count) => {
+      data ??= Float64Array.from(read(0, rows));
+      return data.slice(start * columns, (start + count) * columns);
+    },
+  };
+}
+
 /**
  * The rows of several sources side by side, aligned by key: [keys.length, sum of columns].
  * @param keys every source has all of them

@@ -5,7 +5,7 @@ import type { Realisations, Run, Study } from '../study/study.js';
 import type { RunDerivative } from './derivatives.js';
 import { runDerivative } from './derivatives.js';
 import type { Key } from './realisations.js';
-import { commonKeys, joined, keysOf } from './realisations.js';
+import { commonKeys, joined, kept, keysOf } from './realisations.js';
 
 /**
  * Runs whose realisations are the same simulations: their entries have a cross-covariance, their seeds name the same
@@ -103,7 +103,7 @@ function measure(runs: readonly Run[], seeds: ReadonlyMap<Key, number>): Fiducia
     return { runs, covariance, mean: null, realisations, rows: null };
   }
   const keys = [...sharedKeys(runs)];
-  const source = joined(runs.flatMap(fiducialOf), keys);
+  const source = kept(joined(runs.flatMap(fiducialOf), keys));
   const moments: Moments = momentsOf(source);
   return {
     runs,

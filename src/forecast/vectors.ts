@@ -1,3 +1,5 @@
+import type { Matrix } from '../arrays/rows.js';
+import { dot } from '../linalg/dot.js';
 import type { DerivativeResult, VectorResult } from '../results/schema.js';
 import type { Run, Study } from '../study/study.js';
 import type { RunDerivative, Strand } from './derivatives.js';
@@ -118,27 +120,39 @@ function matchingEvidence({ nodeRows, nodes }: RunDerivative): {
   const correlations: number[] = [];
   const reductions: number[] = [];
   for (let i = 0; i < columns; i += 1) {
-    const series = nodeRows.map(({ rows }) => Float64Array.from({ length: rows.rows }, (_, row) => rows.data[row * columns + i]!));
-    const first = series[0]!;
-    const last = series[series.length - 1]!;
-    const spread = Math.sqrt(comoment(first, first) * comoment(last, last));
-    if (spread > 0) correlations.push(comoment(first, last) / spread);
-    const apart = series.reduce((sum, one, j) => sum + nodes[j]!.weight ** 2 * comoment(one, one), 0);
-    const together = series.reduce(
-      (sum, one, j) => sum + series.reduce((inner, other, k) => inner + nodes[j]!.weight * nodes[k]!.weight * comoment(one, other), 0),
-      0,
-    );
+    const series = nodeRows.map(({ rows }) => centredColumn(rows, i));
+    const last = series.length - 1;
+    const products = series.map((one) => series.map((other) => scalarProduct(one, other)));
+    const spread = Math.sqrt(products[0]![0]! * products[last]![last]!);
+    if (spread > 0) correlations.push(products[0]![last]! / spread);
+    let apart = 0;
+    let together = 0;
+    products.forEach((row, j) => {
+      row.forEach((product, k) => {
+        const term = nodes[j]!.weight * nodes[k]!.weight * product;
+        together += term;
+        if (j === k) apart += term;
+      });
+    });
     if (together > 0) reductions.push(apart / together);
   }
   return { nodeCorrelation: median(correlations), noiseReduction: median(reductions) };
 }
 
-function comoment(a: Float64Array, b: Float64Array): number {
-  const meanA = a.reduce((sum, x) => sum + x, 0) / a.length;
-  const meanB = b.reduce((sum, x) => sum + x, 0) / b.length;
-  let sum = 0;
-  for (let i = 0; i < a.length; i += 1) sum += (a[i]! - meanA) * (b[i]! - meanB);
-  return sum / (a.length - 1);
+/** One entry over the realisations, less its mean. */
+function centredColumn({ data, rows, columns }: Matrix, entry: number): Float64Array {
+  const column = new Float64Array(rows);
+  let mean = 0;
+  for (let row = 0; row < rows; row += 1) {
+    column[row] = data[row * columns + entry]!;
+    mean += column[row]! / rows;
+  }
+  for (let row = 0; row < rows; row += 1) column[row] = column[row]! - mean;
+  return column;
+}
+
+function scalarProduct(a: Float64Array, b: Float64Array): number {
+  return dot(a, 0, b, 0, 0, a.length);
 }
 
 function median(values: readonly number[]): number | null {
