@@ -4,15 +4,9 @@ import type { Realisations } from '../study/study.js';
 /** What names a realisation within a suite: its seed, or `#` and its row where no seeds are given. */
 export type Key = number | string;
 
-/** The keys of the rows, in their order. */
-export function keysOf(realisations: Realisations): readonly Key[] {
-  return keysFrom(realisations.seeds, realisations.rows.rows);
-}
-
-/** Keys from seeds, or from row indices where there are none. */
-export function keysFrom(seeds: Vector | null, rows: number): readonly Key[] {
-  if (seeds === null) return Array.from({ length: rows }, (_, row) => `#${String(row)}`);
-  return Array.from(seeds);
+/** The keys of the rows, in their order: seeds, or row indices where there are none. */
+export function keysOf({ seeds, rows }: Realisations): readonly Key[] {
+  return seeds === null ? Array.from({ length: rows.rows }, (_, row) => `#${String(row)}`) : Array.from(seeds);
 }
 
 /** Where each key stands. */
