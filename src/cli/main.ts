@@ -20,7 +20,7 @@ function parseParts(text: string): ReadonlySet<BuildPart> {
 
 interface BuildFlags {
   readonly out?: string;
-  readonly only: ReadonlySet<BuildPart>;
+  readonly only?: ReadonlySet<BuildPart>;
   readonly requireClaims?: boolean;
 }
 
@@ -36,12 +36,12 @@ function commandLine(terminal: Terminal, finish: (code: ExitCode) => void): Comm
     .description('build the report of a study')
     .argument('<study>', 'folder with a study.yaml')
     .option('--out <folder>', 'where to write (default: report in the study)')
-    .option('--only <parts>', `parts to write, with commas: ${buildParts.join(', ')}`, parseParts, new Set(buildParts))
+    .option('--only <parts>', `parts to write, with commas: ${buildParts.join(', ')} (default: all)`, parseParts)
     .option('--require-claims', 'exit with 1 unless every claim is supported')
     .addHelpText('after', '\nExample:\n  sigmafolio build my-study --only results,html --out out')
     .action(async (study: string, flags: BuildFlags) => {
       const { build } = await import('./build.js');
-      const options = { out: flags.out, only: flags.only, requireClaims: flags.requireClaims === true };
+      const options = { out: flags.out, only: flags.only ?? new Set(buildParts), requireClaims: flags.requireClaims === true };
       finish(await build(study, options, terminal));
     });
   program

@@ -88,4 +88,10 @@ describe('errors that rest on cancellations', () => {
     ]);
     expect(judged(cancellation, measured(1.05))[0]!.level).toBe('ok');
   });
+
+  it('are not sought where no direction of the data is small', () => {
+    const { smallestDirections } = measured(1.3);
+    const even = { joint: { ...smallestDirections.joint, condition: 1.8 } };
+    expect(judged(cancellation, { smallestDirections: even })[0]).toMatchObject({ level: 'ok' });
+  });
 });
