@@ -148,6 +148,28 @@ describe('two tracers whose noise is shared: the ratio becomes exact as the corr
     expectDigits(errors.alpha!.fixed.corrected, unmarginalised_sigma_alpha, 11);
   });
 
+  it.each(i.rows)('gain 1/sqrt(1 - rho^2) by a tracer that only knows the noise, correlation $rho', ({ rho: text }) => {
+    // The second tracer does not respond: what it gives, it gives by predicting the first one's noise. Partitioned inverse, exact.
+    const rho = Number(text);
+    const study = memoryStudy({
+      parameters: [parameter('alpha')],
+      combinations: [combination('one', ['first']), combination('both', ['first', 'second'])],
+      runs: [
+        momentsRun('run', [...columnsOf('first', 1), ...columnsOf('second', 1)], {
+          covariance: { data: Float64Array.of(1, rho, rho, 1), rows: 2, columns: 2 },
+          realisations: null,
+          derivatives: { alpha: { kind: 'exact', values: Float64Array.of(i.beta, 0) } },
+        }),
+      ],
+    });
+    const { improvements, attribution } = forecast(study, { name: 'test', version: '0' });
+    const gain = 1 / Math.sqrt(1 - rho * rho);
+    expectDigits(improvements.both!.alpha!.marginalised.corrected, gain, 11);
+    expectDigits(attribution!.both!.throughNoise.alpha!.gain, gain, 11);
+    expect(attribution!.both!.ties[0]!.correlations[0]).toBeCloseTo(rho, 11);
+    expect(attribution!.both!.ties[0]!.predicted[0]!.share).toBeCloseTo(rho * rho, 11);
+  });
+
   it.each(ii.rows)('common variance $s2', ({ s2, sigma_alpha, var_beta }) => {
     const v = [ii.alpha, 1];
     const covariance = v.map((a, k) => v.map((b, l) => Number(s2) * a * b + (k === l ? ii.n2 : 0)));

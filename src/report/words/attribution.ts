@@ -53,8 +53,21 @@ function closing(results: Results, { combination, parameter, gain, degeneracy }:
   return say` With ${parameterLabel(results, least.other)} known it would be ${significant(least.gain, 3)}.`;
 }
 
-/** What the added entries give by predicting the baseline's noise, with no response of their own. */
-export const throughNoise: SentenceMaker = (results) => {
+
+/** The largest canonical correlation of each combination. */
+const correlations: SentenceMaker = (results) => {
+  const all = Object.entries(results.attribution ?? {}).flatMap(([combination, { ties }]) => {
+    const largest = Math.max(...ties.map((tie) => tie.correlations[0] ?? 0));
+    return ties.length === 0 ? [] : [{ combination, largest }];
+  });
+  if (all.length === 0) return [];
+  return [
+    paragraph(...say`The largest canonical correlation between the noise of the baseline's entries and that of the added ones:`),
+    list(all.map(({ combination, largest }): PhrasingContent[] => say`${combinationLabel(results, combination)}: ${significant(largest, 2)}.`)),
+  ];
+};
+
+const predicted: SentenceMaker = (results) => {
   const found = Object.entries(results.attribution ?? {}).flatMap(([combination, { throughNoise: gains }]) =>
     targets(results).flatMap((parameter) => {
       const one = gains[parameter];
@@ -77,6 +90,9 @@ export const throughNoise: SentenceMaker = (results) => {
     ),
   ];
 };
+
+/** What the added entries give by predicting the baseline's noise, with no response of their own, and how far the two are tied. */
+export const throughNoise: SentenceMaker = (results) => [...predicted(results), ...correlations(results)];
 
 /** For the contents. */
 export function attributionState(results: Results): string {
